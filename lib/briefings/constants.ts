@@ -1,0 +1,42 @@
+/** States of a briefing, from the first version on; the spine walks a part of them under the same names. */
+export const BRIEFING_STATES = [
+  "draft",
+  "figureCheck",
+  "legalReview",
+  "changesAsked",
+  "approved",
+  "scheduled",
+  "published",
+  "underCorrection",
+  "reviewDue",
+  "withdrawn",
+  "archived",
+] as const;
+export type BriefingState = (typeof BRIEFING_STATES)[number];
+
+/** Named parts of the text, in the order in which residents read them. */
+export const PART_KEYS = [
+  "inShort",
+  "whatToDo",
+  "whatWeExpect",
+  "howSure",
+  "whatWeDontKnow",
+  "howToObject",
+] as const;
+export type PartKey = (typeof PART_KEYS)[number];
+
+/**
+ * One paragraph. `text` is plain text with tokens: `{{F1}}` a bound figure, `{{start:eve}}` and `{{end:eve}}` the first
+ * and last day in force of a measure, `{{from}}` and `{{to}}` those of the package, `{{review}}` the day of the next look.
+ */
+export type Paragraph = {
+  /** Stable across languages. */
+  id: string;
+  part: PartKey;
+  text: string;
+  /** Translations: hash of the source paragraph that this was made from. */
+  sourceHash?: string;
+};
+
+/** A bound figure: a reference into the frozen assessment. `package` is a letter, or "none" for no further measures. */
+export type FigureRef = { ref: string; figure: string; package: string; form: "value" | "interval" };
