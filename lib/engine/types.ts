@@ -105,6 +105,8 @@ export type Phase = {
   effectiveRatioAtEnd: number;
   /** E + I, persons. */
   infectedAtEnd: number;
+  /** At a lift: chance that the chains end by themselves afterwards; null where nothing is lifted. */
+  chanceEndsByItself: number | null;
 };
 
 export type PeakInfectious = { day: number; infectious: number };
