@@ -27,6 +27,15 @@ export function transformHtml(
     }
     return mode;
   };
+  /** From here on Node writes the head itself, with the headers as they stand. */
+  const release = () => {
+    response.writeHead = original.writeHead;
+  };
+  const passes = () => {
+    const passing = decide() === "pass";
+    if (passing) release();
+    return passing;
+  };
   const keep = (chunk: Chunk, encoding?: unknown) =>
     chunks.push(typeof chunk === "string" ? Buffer.from(chunk, typeof encoding === "string" ? (encoding as BufferEncoding) : "utf8") : Buffer.from(chunk));
 
@@ -38,22 +47,23 @@ export function transformHtml(
     return response;
   }) as ServerResponse["writeHead"];
   response.flushHeaders = () => {
-    if (decide() === "pass") original.flushHeaders();
+    if (passes()) original.flushHeaders();
   };
   response.write = ((chunk: Chunk, ...rest: unknown[]) => {
-    if (decide() === "pass") return (original.write as (...all: unknown[]) => boolean)(chunk, ...rest);
+    if (passes()) return (original.write as (...all: unknown[]) => boolean)(chunk, ...rest);
     keep(chunk, rest[0]);
     for (const each of rest) if (typeof each === "function") queueMicrotask(each as () => void);
     return true;
   }) as ServerResponse["write"];
   response.end = ((...args: unknown[]) => {
-    if (decide() === "pass") return (original.end as (...all: unknown[]) => ServerResponse)(...args);
+    if (passes()) return (original.end as (...all: unknown[]) => ServerResponse)(...args);
     const callback = args.find((each) => typeof each === "function");
     if (args[0] !== undefined && typeof args[0] !== "function") keep(args[0] as Chunk, args[1]);
     const html = transform(Buffer.concat(chunks).toString("utf8"), (name, value) => response.setHeader(name, value));
     const body = compress(response, Buffer.from(html, "utf8"), acceptEncoding);
     response.removeHeader("transfer-encoding");
     response.setHeader("Content-Length", body.byteLength);
+    release();
     return original.end(body, callback as () => void);
   }) as ServerResponse["end"];
 }
