@@ -32,8 +32,8 @@ export type OffThreadOptions = {
   signal?: AbortSignal | undefined;
   /** Milliseconds, waiting included. Default 60,000. */
   timeLimitMs?: number;
-  /** Draws done so far, of how many. */
-  onProgress?: (done: number, of: number) => void;
+  /** Share of the draws done, 0..1. */
+  onProgress?: (share: number) => void;
 };
 
 /**
@@ -46,7 +46,7 @@ export async function assessOffThread(input: AssessmentInput, options: OffThread
   const timeLimit = AbortSignal.timeout(timeLimitMs);
   const stop = signal ? AbortSignal.any([signal, timeLimit]) : timeLimit;
   const channel = onProgress ? new MessageChannel() : null;
-  channel?.port1.on("message", ({ done, of }: { done: number; of: number }) => onProgress?.(done, of));
+  channel?.port1.on("message", (share: number) => onProgress?.(share));
   try {
     const outcome = await (pool().run(channel ? { input, progress: channel.port2 } : { input }, {
       signal: stop,
@@ -57,7 +57,7 @@ export async function assessOffThread(input: AssessmentInput, options: OffThread
   } catch (error) {
     if (signal?.aborted) throw new ComputeError("cancelled");
     if (timeLimit.aborted) throw new ComputeError("timeLimit");
-    if (error instanceof Error && /queue/i.test(error.message)) throw new ComputeError("busy");
+    if (error instanceof Error && error.message === "Task queue is at limit") throw new ComputeError("busy");
     throw error;
   } finally {
     channel?.port1.close();
