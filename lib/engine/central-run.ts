@@ -1,8 +1,8 @@
 /** The central run: every input at its centre, integrated twice, by the solver that is drawn and by the fast kernel. */
 import { factorFromDayZero, type Plan, pieceFactors } from "./measure-effects";
 import { thresholdRatioOf } from "./outbreak";
-import { packageCost, type Tariff } from "./prices";
-import { removalsToCome } from "./settled-state";
+import { costPerDeath, packageCost, type Tariff } from "./prices";
+import { removalsToCome, removedBetween } from "./settled-state";
 import { followSchedule, newRun, type Parameters, TEN_YEARS_DAYS } from "./taylor-kernel";
 import { trajectory } from "./trajectory";
 import { chanceChainsEnd } from "./transmission";
@@ -42,14 +42,14 @@ export function runPackage(p: Parameters, plan: Plan, tariff: Tariff, without: W
   const factors = [...pieceFactors(plan, -1, new Float64Array(pieces.length))];
   const drawn = trajectory(p, starts, factors, horizonDays);
   const fast = followSchedule(p, starts, factors, { peak: true, belowOne: true }, newRun(pieces.length));
-  const held = removalsHeld(p, plan, drawn.states[strongest]!, factors[strongest]!);
+  const held = removalsHeld(p, drawn.states[strongest]!, factors[strongest]!);
   const fromZero = settledFromDayZero(p, factorFromDayZero(plan, -1));
-  const fastHeld = removalsHeld(p, plan, { susceptible: fast.susceptibleAt[strongest]!, latent: fast.latentAt[strongest]!, infectious: fast.infectiousAt[strongest]! }, factors[strongest]!);
+  const fastHeld = removalsHeld(p, { susceptible: fast.susceptibleAt[strongest]!, latent: fast.latentAt[strongest]!, infectious: fast.infectiousAt[strongest]! }, factors[strongest]!);
 
   const phases = pieces.map((piece, k): Phase => {
     const at = drawn.states[k]!;
     const next = drawn.states[k + 1];
-    const susceptibleAtEnd = next?.susceptible ?? p.population - p.removed - drawn.removals;
+    const susceptibleAtEnd = next?.susceptible ?? drawn.susceptibleLeft;
     const infectedAtEnd = next ? next.latent + next.infectious : 0;
     const after = next ? thresholdRatioOf(p, next.susceptible, factors[k + 1]!) : null;
     return {
@@ -89,7 +89,7 @@ export function runPackage(p: Parameters, plan: Plan, tariff: Tariff, without: W
         total: cost.total,
         byPayer: cost.byPayer,
         ...(tariff.hasTransfers ? { transfers: cost.transfers } : {}),
-        perDeathAverted: deathsAverted.asScheduled > 0 ? cost.total / deathsAverted.asScheduled : null,
+        perDeathAverted: costPerDeath(cost.total, deathsAverted.asScheduled),
       },
       chargedUntilDay,
       contributions: contributions(plan),
@@ -106,9 +106,9 @@ export function runPackage(p: Parameters, plan: Plan, tariff: Tariff, without: W
 }
 
 /** Removals from day 0 on where the strongest piece, once begun, never ends. */
-export function removalsHeld(p: Parameters, _plan: Plan, at: { susceptible: number; latent: number; infectious: number }, factor: number) {
-  const soFar = p.population - at.susceptible - at.latent - at.infectious - p.removed;
-  const solved = removalsToCome({ ...at, removed: 0 }, p.population, p.transmissionRate * factor, p.removalRate);
+export function removalsHeld(p: Parameters, at: { susceptible: number; latent: number; infectious: number }, factor: number) {
+  const soFar = removedBetween(p, at);
+  const solved = removalsToCome(at, p.population, p.transmissionRate * factor, p.removalRate);
   return { ...solved, value: soFar + solved.value };
 }
 

@@ -49,6 +49,12 @@ export function packageCost(plan: Plan, tariff: Tariff, population: number, char
   return { total: byPayer.public + byPayer.business + byPayer.household, byPayer, transfers };
 }
 
+/** Cost per death averted; null where none is averted, or so little that the quotient is no number. */
+export function costPerDeath(cost: number, deathsAverted: number): number | null {
+  const quotient = deathsAverted > 0 ? cost / deathsAverted : Number.NaN;
+  return Number.isFinite(quotient) ? quotient : null;
+}
+
 /** A package as the price plane sees it. */
 export type Priced = { id: string; cost: number; deathsAverted: number };
 
@@ -81,7 +87,7 @@ export function priceComparison(packages: readonly Priced[]): Omit<Comparison, "
     const from = hull[index]!;
     const cost = to.cost - from.cost;
     const deathsAverted = to.deathsAverted - from.deathsAverted;
-    return { from: from.id, to: to.id, cost, deathsAverted, ratio: deathsAverted > 0 ? cost / deathsAverted : null };
+    return { from: from.id, to: to.id, cost, deathsAverted, ratio: costPerDeath(cost, deathsAverted) };
   });
   return {
     efficient: hull.filter(({ id }) => id !== "none").map(({ id }) => id),

@@ -4,7 +4,7 @@
  * @see Jorba & Zou (2005), Experimental Mathematics 14:99, for the choice of step
  */
 import { findRoot } from "./numeric";
-import { removalsToCome } from "./settled-state";
+import { removalsToCome, removedBetween } from "./settled-state";
 import { stepWithLatent, stepWithoutLatent, TAYLOR_ORDER } from "./taylor-step.generated";
 
 /** One draw (or the central run) of what drives the outbreak. Persons, per day, share. */
@@ -127,9 +127,9 @@ export function followSchedule(p: Parameters, starts: ArrayLike<number>, factors
   const latent = run.latentAt[last]!;
   const infectious = run.infectiousAt[last]!;
   const beta = p.transmissionRate * factors[last]!;
-  const removedSoFar = n - s - latent - infectious - p.removed;
-  const solved = removalsToCome({ susceptible: s, latent, infectious, removed: 0 }, n, beta, gamma);
-  run.removals = removedSoFar + solved.value;
+  const state = { susceptible: s, latent, infectious };
+  const solved = removalsToCome(state, n, beta, gamma);
+  run.removals = removedBetween(p, state) + solved.value;
   run.converged = solved.outcome === "converged";
   run.residual = solved.residual;
 

@@ -6,7 +6,7 @@
 import { Outcome, Solver } from "odex";
 import { EngineError } from "./errors";
 import { findRoot } from "./numeric";
-import { removalsToCome } from "./settled-state";
+import { removalsToCome, removedBetween } from "./settled-state";
 import type { Parameters } from "./taylor-kernel";
 import type { CoursePoint } from "./types";
 
@@ -17,6 +17,8 @@ export type Trajectory = {
   states: { susceptible: number; latent: number; infectious: number }[];
   /** Removals from day 0 to t → ∞, persons. */
   removals: number;
+  /** Susceptible at t → ∞, persons. */
+  susceptibleLeft: number;
 };
 
 const RELATIVE_TOLERANCE = 1e-11;
@@ -46,7 +48,7 @@ export function trajectory(p: Parameters, starts: readonly number[], factors: re
       latent: e,
       infectious: i,
       deathsPerDay: p.infectionFatality * p.removalRate * i,
-      cumulativeDeaths: p.infectionFatality * Math.max(0, n - s - e - i - p.removed),
+      cumulativeDeaths: p.infectionFatality * Math.max(0, removedBetween(p, { susceptible: s, latent: e, infectious: i })),
     });
   };
   const raise = (day: number, infectious: number) => {
@@ -104,16 +106,18 @@ export function trajectory(p: Parameters, starts: readonly number[], factors: re
     integrate(starts[k]!, starts[k + 1]!, p.transmissionRate * factors[k]!, () => false);
   }
   const beta = p.transmissionRate * factors[last]!;
-  const final = { susceptible: y[S]!, latent: y[E]!, infectious: y[I]!, removed: 0 };
+  const final = { susceptible: y[S]!, latent: y[E]!, infectious: y[I]! };
   states.push(final);
   const solved = removalsToCome(final, n, beta, p.removalRate);
   if (solved.outcome !== "converged") throw new EngineError("notConverged");
 
+  // S∞ = S e^(−u*), with u* = removals to come × β/(γN): no difference of large numbers.
+  const susceptibleLeft = final.susceptible * Math.exp((-solved.value * beta) / (p.removalRate * n));
   // Past the last switch only for the drawing and the peak: where it settles is already known.
   const falling = ([s, e, i]: readonly number[]) =>
     beta * s! <= p.removalRate * n && (p.onsetRate === null ? (beta * s! * i!) / n : p.onsetRate * e!) <= p.removalRate * i!;
   let day = starts[last]!;
   if (day < horizonDays) day = integrate(day, horizonDays, beta, () => false);
   if (!falling(y)) integrate(day, PEAK_SEARCH_DAYS, beta, (state) => falling(state) || state[E]! + state[I]! < 1e-9);
-  return { course, peak, states, removals: n - final.susceptible - final.latent - final.infectious - p.removed + solved.value };
+  return { course, peak, states, removals: removedBetween(p, final) + solved.value, susceptibleLeft };
 }

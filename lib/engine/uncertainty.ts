@@ -3,7 +3,7 @@ import { removalsHeld, settledFromDayZero } from "./central-run";
 import { EngineError } from "./errors";
 import { factorFromDayZero, type Plan, pieceFactors } from "./measure-effects";
 import { type ParametersAt, thresholdRatioOf } from "./outbreak";
-import { type ByPayer, PAYERS, packageCost, type Tariff } from "./prices";
+import { type ByPayer, costPerDeath, PAYERS, packageCost, type Tariff } from "./prices";
 import { interval, mean, shareError, summarise } from "./statistics";
 import { followSchedule, newRun, type Parameters } from "./taylor-kernel";
 import { chanceChainsEnd } from "./transmission";
@@ -102,7 +102,7 @@ function drawPackage(p: Parameters, plan: Plan, tariff: Tariff, held: Held, deat
   const k = plan.strongest;
   const phi = p.infectionFatality;
   const scheduled = phi * run.removals;
-  const toEnd = phi * removalsHeld(p, plan, { susceptible: run.susceptibleAt[k]!, latent: run.latentAt[k]!, infectious: run.infectiousAt[k]! }, factors[k]!).value;
+  const toEnd = phi * removalsHeld(p, { susceptible: run.susceptibleAt[k]!, latent: run.latentAt[k]!, infectious: run.infectiousAt[k]! }, factors[k]!).value;
   figures.thresholdRatio[row] = thresholdRatioOf(p, p.susceptible, factors[k]!);
   figures.asScheduled[row] = scheduled;
   figures.heldToEnd[row] = toEnd;
@@ -148,7 +148,8 @@ function summarisePackage(held: Held, plan: Plan, cut: (v: Float64Array) => Floa
   const chanceEnough = cut(held.figures.thresholdRatio).filter((b) => b >= 1).length / used;
   monteCarloError["chanceEnough"] = shareError(chanceEnough, used);
   // A ratio of two uncertain numbers has no interval where the lower one can be 0 or below.
-  const ratios = averted.every((value) => value > 0) ? summarise(total.map((value, i) => value / averted[i]!)) : null;
+  const quotients = Array.from(total, (value, i) => costPerDeath(value, averted[i]!));
+  const ratios = quotients.includes(null) ? null : summarise(Float64Array.from(quotients as number[]));
   if (ratios) monteCarloError["perDeathAverted"] = ratios.error;
   const phases = plan.pieces.map((piece, k) => {
     const chanceShrinksAtStart = held.shrinks[k]! / used;
