@@ -5,20 +5,23 @@ import type { AssessmentInput, AssessmentResult } from "@/lib/engine/types";
 import { ComputeError, type TaskOutcome } from "./outcome";
 import { workerFile } from "./worker-file";
 
-/** Calculations that may wait beyond those that run; the next one is told to come back. */
-const QUEUE_MAX = 12;
+/** Calculations that may be under way or waiting; the next one is told to come back. */
+const PENDING_MAX = 12;
 const TIME_LIMIT_MS = 60_000;
 
-type Held = { ebbmarkCompute?: Piscina };
+type Held = { ebbmarkCompute?: Piscina; ebbmarkComputePending?: number };
 const held = globalThis as Held;
+const pending = (change: number): number => {
+  held.ebbmarkComputePending = (held.ebbmarkComputePending ?? 0) + change;
+  return held.ebbmarkComputePending;
+};
 
 // On globalThis, so that hot reload doesn't leave a pool behind per save.
 function pool(): Piscina {
   held.ebbmarkCompute ??= new Piscina({
     filename: workerFile(),
     minThreads: 0,
-    maxThreads: Math.max(1, os.availableParallelism() - 1),
-    maxQueue: QUEUE_MAX,
+    maxThreads: Math.min(4, Math.max(1, os.availableParallelism() - 1)),
     idleTimeout: 30_000,
     resourceLimits: { maxOldGenerationSizeMb: 1024 },
     // What node was started with (a loader of TypeScript, say) is not for the bundle.
@@ -43,6 +46,8 @@ export type OffThreadOptions = {
 export async function assessOffThread(input: AssessmentInput, options: OffThreadOptions = {}): Promise<AssessmentResult> {
   const { signal, timeLimitMs = TIME_LIMIT_MS, onProgress } = options;
   if (signal?.aborted) throw new ComputeError("cancelled");
+  if (pending(0) >= PENDING_MAX) throw new ComputeError("busy");
+  pending(1);
   const timeLimit = AbortSignal.timeout(timeLimitMs);
   const stop = signal ? AbortSignal.any([signal, timeLimit]) : timeLimit;
   const channel = onProgress ? new MessageChannel() : null;
@@ -57,9 +62,9 @@ export async function assessOffThread(input: AssessmentInput, options: OffThread
   } catch (error) {
     if (signal?.aborted) throw new ComputeError("cancelled");
     if (timeLimit.aborted) throw new ComputeError("timeLimit");
-    if (error instanceof Error && error.message === "Task queue is at limit") throw new ComputeError("busy");
     throw error;
   } finally {
+    pending(-1);
     channel?.port1.close();
   }
 }
