@@ -13,8 +13,8 @@ export default defineConfig({
   resolve: { alias },
   test: {
     projects: [
-      project("unit"),
-      project("reference"),
+      project("unit", { testTimeout: 120_000 }),
+      project("reference", { testTimeout: 120_000 }),
       project("integration", { testTimeout: 60_000, hookTimeout: 60_000 }),
       project("browser", { testTimeout: 240_000, hookTimeout: 120_000, fileParallelism: false }),
       project("long", { testTimeout: 3_600_000, hookTimeout: 120_000, fileParallelism: false }),

@@ -4,6 +4,10 @@ export const LIMITS = {
   periodDaysMin: 0.01,
   periodDaysMax: 3650,
   reproductionNumberMax: 100,
+  /** Of β per day and of reproduction numbers: above 0 in any use, and far enough from it to divide by. */
+  transmissionMin: 1e-6,
+  /** Infectious and latent together, persons. */
+  infectedMin: 1e-6,
   cutMin: -1,
   /** Exclusive. */
   cutMax: 1,

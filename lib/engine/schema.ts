@@ -42,11 +42,11 @@ const cost: Range = { min: 0, max: LIMITS.costMax };
 
 /** What may be given, per way of giving transmission. */
 export const TRANSMISSION_RANGE: Record<TransmissionGiven, Range> = {
-  rate: { above: 0, max: LIMITS.rateMax },
-  reproductionNumber: { above: 0, max: LIMITS.reproductionNumberMax },
-  effectiveReproductionNumber: { above: 0, max: LIMITS.reproductionNumberMax },
+  rate: { min: LIMITS.transmissionMin, max: LIMITS.rateMax },
+  reproductionNumber: { min: LIMITS.transmissionMin, max: LIMITS.reproductionNumberMax },
+  effectiveReproductionNumber: { min: LIMITS.transmissionMin, max: LIMITS.reproductionNumberMax },
   growthRate: { min: -LIMITS.growthRateMax, max: LIMITS.growthRateMax },
-  doublingTime: { above: 0, max: LIMITS.periodDaysMax },
+  doublingTime: { min: LIMITS.periodDaysMin, max: LIMITS.periodDaysMax },
 };
 
 const isoDate = z.string("must be a date").refine((value) => {
@@ -170,7 +170,7 @@ function peopleFaults({ outbreak }: AssessmentInput): Fault[] {
   const exposed = outbreak.exposed === undefined ? null : central(outbreak.exposed);
   const { population, latentPeriod } = outbreak;
   if (latentPeriod === null && (exposed ?? 0) > 0) faults.push({ path: "outbreak.exposed", message: "must be 0 or left out where there is no latent stage (latentPeriod null)" });
-  if (infectious + (exposed ?? 0) <= 0) faults.push({ path: "outbreak.infectious", message: "must be above 0 where nobody is latent: without anybody infected there is no outbreak" });
+  if (infectious + (exposed ?? 0) < LIMITS.infectedMin) faults.push({ path: "outbreak.infectious", message: "must be above 0 where nobody is latent: without anybody infected there is no outbreak" });
   if (infectious + removed + (exposed ?? 0) >= population) {
     faults.push({ path: "outbreak.population", message: "must be above infectious + exposed + removed, so that somebody is susceptible" });
   }

@@ -35,7 +35,7 @@ describe("outside the domain the engine names the field and what is allowed", ()
     ["outbreak.infectious.low", 70, "outbreak.infectious: must be in order: low at most central, central at most high"],
     ["outbreak.infectiousPeriod", 0.001, "outbreak.infectiousPeriod: must be at least 0.01 and at most 3,650"],
     ["outbreak.infectionFatality.high", 1.2, "outbreak.infectionFatality.high: must be at least 0 and at most 1"],
-    ["outbreak.transmission.value", 101, "outbreak.transmission.value: must be above 0 and at most 100"],
+    ["outbreak.transmission.value", 101, "outbreak.transmission.value: must be at least 0.000001 and at most 100"],
     ["outbreak.transmission.given", "guess", "outbreak.transmission.given: must be one of rate, reproductionNumber"],
     ["outbreak.dayZero", "2027-02-30", "outbreak.dayZero: must be a calendar date, yyyy-mm-dd"],
     ["outbreak.susceptible", 400_000, "outbreak.exposed: must be given where susceptible is given: the four must add up to the population"],
