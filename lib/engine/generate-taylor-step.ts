@@ -26,7 +26,7 @@ function stepSource(latent: boolean): string {
   );
   for (const k of range(0, ORDER - 1)) {
     const convolution = range(0, k).map((j) => `s${j} * i${k - j}`).join(" + ");
-    const over = k === 0 ? "" : ` / ${k + 1}`;
+    const over = k === 0 ? "" : ` * ${1 / (k + 1)}`;
     lines.push(`  const n${k} = beta * (${convolution});`, `  const s${k + 1} = -n${k}${over};`);
     if (latent) lines.push(`  const o${k} = sigma * e${k};`, `  const e${k + 1} = (n${k} - o${k})${over};`, `  const i${k + 1} = (o${k} - gamma * i${k})${over};`);
     else lines.push(`  const i${k + 1} = (n${k} - gamma * i${k})${over};`);
@@ -35,7 +35,8 @@ function stepSource(latent: boolean): string {
   lines.push(
     `  const last = ${size(ORDER)};`,
     `  const before = ${size(ORDER - 1)};`,
-    `  let h = Math.min(Math.pow(tolerance / last, 1 / ${ORDER}), Math.pow(tolerance / before, 1 / ${ORDER - 1}));`,
+    // Two logarithms and one exponential cost half of two powers.
+    `  let h = Math.exp(Math.min(Math.log(tolerance / last) / ${ORDER}, Math.log(tolerance / before) / ${ORDER - 1}));`,
     "  if (!(h < hMax)) h = hMax;",
     `  y[0] = ${horner("s")};`,
     ...(latent ? [`  y[1] = ${horner("e")};`] : []),

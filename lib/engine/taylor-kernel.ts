@@ -49,7 +49,8 @@ export const newRun = (pieces: number): Run => ({
 });
 
 export const TEN_YEARS_DAYS = 3650;
-const TOLERANCE = 1e-15;
+/** Size of the last terms left out, relative to S and to E + I: about 1e-12 of the settled value, at half the steps of 1e-15. */
+const TOLERANCE = 1e-10;
 const STEP_MAX_DAYS = 60;
 /** An outbreak that hasn't peaked by then won't within any use of this. */
 const PEAK_SEARCH_DAYS = 200_000;
