@@ -3,7 +3,7 @@
  * since its step control assumes a smooth right side. Independent of `taylor-kernel.ts`, which it checks.
  * @see Hairer, Nørsett & Wanner (1993), Solving Ordinary Differential Equations I, II.9
  */
-import { Outcome, Solver } from "odex";
+import { Outcome, Solver } from "./odex-solver.mjs";
 import { EngineError } from "./errors";
 import { findRoot } from "./numeric";
 import { removalsToCome, removedBetween } from "./settled-state";
