@@ -39,3 +39,10 @@ export function formatMoney(amount: number, { power }: MoneyUnit, locale: string
 }
 
 const minus = (text: string) => text.replace(/^-/, "−");
+
+/** A calendar day for tables: day and short month, the year only where asked for. @param iso yyyy-mm-dd */
+export function formatShortDay(iso: string, locale: string, withYear = false): string {
+  const tag = locale.replace(/^en(?=-|$)(?!-[A-Z]{2})/, "en-GB");
+  const options: Intl.DateTimeFormatOptions = { timeZone: "UTC", day: "numeric", month: "short", ...(withYear ? { year: "numeric" } : {}) };
+  return new Intl.DateTimeFormat(tag, options).format(new Date(`${iso}T00:00:00Z`)).replaceAll(" ", "\u00a0");
+}
