@@ -29,6 +29,7 @@ export const AUDIT_ACTIONS = [
   "subscription.confirm",
   "subscription.change",
   "subscription.leave",
+  "subscription.erase",
   "settings.update",
 ] as const;
 export type AuditAction = (typeof AUDIT_ACTIONS)[number];
