@@ -3,11 +3,12 @@
  * since everything that disturbs a run makes it longer.
  */
 import { readFileSync } from "node:fs";
-import { type AssessmentInput, assess, settledState } from "@/lib/engine";
+import { type AssessmentInput, assess } from "@/lib/engine";
 import { makePlan, pieceFactors } from "@/lib/engine/measure-effects";
 import { outbreakReader } from "@/lib/engine/outbreak";
 import { Draws } from "@/lib/engine/quantities";
 import { latinHypercubeScores } from "@/lib/engine/random";
+import { settledValue } from "@/lib/engine/settled-state";
 import { followSchedule, newRun } from "@/lib/engine/taylor-kernel";
 
 const demo = JSON.parse(readFileSync(new URL("../../db/demo/kelmaren.json", import.meta.url), "utf8")) as AssessmentInput;
@@ -41,7 +42,7 @@ function settledValues(): void {
   }
   let sum = 0;
   const ms = best(5, () => {
-    for (let i = 0; i < count; i++) sum += settledState({ excess: excess[i]!, thresholdRatio: ratio[i]! }).value;
+    for (let i = 0; i < count; i++) sum += settledValue(excess[i]!, ratio[i]!, 1 - ratio[i]!);
   });
   if (!Number.isFinite(sum)) throw new Error("a settled value is not finite");
   say("settled value, 1,000,000 random inputs, 30 % near b = 1", ms, `${((1e6 * ms) / count).toFixed(0)} ns each`);
