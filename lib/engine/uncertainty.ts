@@ -132,7 +132,7 @@ function summariseOutbreak(outbreak: Columns<(typeof OUTBREAK)[number]>, cut: (v
   };
   const figures = Object.fromEntries(OUTBREAK.map((name) => [name, take(name)])) as Record<(typeof OUTBREAK)[number], Interval>;
   const chanceShrinks = cut(outbreak.thresholdRatio).filter((b) => b >= 1).length / used;
-  monteCarloError["chanceShrinks"] = shareError(chanceShrinks, used);
+  monteCarloError.chanceShrinks = shareError(chanceShrinks, used);
   return { ...figures, chanceShrinks, monteCarloError };
 }
 
@@ -146,11 +146,11 @@ function summarisePackage(held: Held, plan: Plan, cut: (v: Float64Array) => Floa
   const averted = cut(held.figures.avertedAsScheduled);
   const total = cut(held.figures.total);
   const chanceEnough = cut(held.figures.thresholdRatio).filter((b) => b >= 1).length / used;
-  monteCarloError["chanceEnough"] = shareError(chanceEnough, used);
+  monteCarloError.chanceEnough = shareError(chanceEnough, used);
   // A ratio of two uncertain numbers has no interval where the lower one can be 0 or below.
   const quotients = Array.from(total, (value, i) => costPerDeath(value, averted[i]!));
   const ratios = quotients.includes(null) ? null : summarise(Float64Array.from(quotients as number[]));
-  if (ratios) monteCarloError["perDeathAverted"] = ratios.error;
+  if (ratios) monteCarloError.perDeathAverted = ratios.error;
   const phases = plan.pieces.map((piece, k) => {
     const chanceShrinksAtStart = held.shrinks[k]! / used;
     monteCarloError[`phases.${k}.chanceShrinksAtStart`] = shareError(chanceShrinksAtStart, used);

@@ -41,8 +41,8 @@ describe("final size by reproduction number", () => {
     const solved = settledState({ excess: 0, thresholdRatio: 1 / r, margin });
     expect(solved.outcome).toBe("converged");
     const attack = solved.value / r;
-    if (tolerance["absolute"]) {
-      expect(Math.abs(attack - Number(expected.attackRate_z))).toBeLessThanOrEqual(Number(tolerance["absolute"]));
+    if (tolerance.absolute) {
+      expect(Math.abs(attack - Number(expected.attackRate_z))).toBeLessThanOrEqual(Number(tolerance.absolute));
       return;
     }
     expect(note(solved.value, expected.uStar)).toBeLessThanOrEqual(1e-13);
