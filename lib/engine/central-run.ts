@@ -2,7 +2,7 @@
 import { factorFromDayZero, type Plan, pieceFactors } from "./measure-effects";
 import { thresholdRatioOf } from "./outbreak";
 import { costPerDeath, packageCost, type Tariff } from "./prices";
-import { removalsToCome, removedBetween } from "./settled-state";
+import { removalsToCome, type State } from "./settled-state";
 import { followSchedule, newRun, type Parameters, TEN_YEARS_DAYS } from "./taylor-kernel";
 import { trajectory } from "./trajectory";
 import { chanceChainsEnd } from "./transmission";
@@ -10,7 +10,7 @@ import type { PackageResult, Phase, Warning, WithoutMeasuresResult } from "./typ
 
 export type Check = { integratorDifferencePersons: number; settledResidual: number; converged: boolean };
 
-const stateOf = (p: Parameters) => ({ susceptible: p.susceptible, latent: p.exposed, infectious: p.infectious, removed: p.removed });
+const stateOf = (p: Parameters): State => ({ susceptible: p.susceptible, latent: p.exposed, infectious: p.infectious, removed: 0 });
 
 /** Removals from day 0 on under a factor on β that holds for ever. Persons. */
 export const settledFromDayZero = (p: Parameters, factor: number) =>
@@ -44,7 +44,7 @@ export function runPackage(p: Parameters, plan: Plan, tariff: Tariff, without: W
   const fast = followSchedule(p, starts, factors, { peak: true, belowOne: true }, newRun(pieces.length));
   const held = removalsHeld(p, drawn.states[strongest]!, factors[strongest]!);
   const fromZero = settledFromDayZero(p, factorFromDayZero(plan, -1));
-  const fastHeld = removalsHeld(p, { susceptible: fast.susceptibleAt[strongest]!, latent: fast.latentAt[strongest]!, infectious: fast.infectiousAt[strongest]! }, factors[strongest]!);
+  const fastHeld = removalsHeld(p, fast.states[strongest]!, factors[strongest]!);
 
   const phases = pieces.map((piece, k): Phase => {
     const at = drawn.states[k]!;
@@ -106,10 +106,9 @@ export function runPackage(p: Parameters, plan: Plan, tariff: Tariff, without: W
 }
 
 /** Removals from day 0 on where the strongest piece, once begun, never ends. */
-export function removalsHeld(p: Parameters, at: { susceptible: number; latent: number; infectious: number }, factor: number) {
-  const soFar = removedBetween(p, at);
-  const solved = removalsToCome(at, p.population, p.transmissionRate * factor, p.removalRate);
-  return { ...solved, value: soFar + solved.value };
+export function removalsHeld(p: Parameters, from: State, factor: number) {
+  const solved = removalsToCome(from, p.population, p.transmissionRate * factor, p.removalRate);
+  return { ...solved, value: from.removed + solved.value };
 }
 
 function contributions(plan: Plan): PackageResult["contributions"] {

@@ -22,3 +22,7 @@ export class EngineError extends Error {
 
 export const outsideDomain = (path: string, message: string): EngineError =>
   new EngineError("outsideDomain", [{ path, message }]);
+
+/** Periods a thousand times shorter than the schedule would take hours: refused rather than left to run. */
+export const tooManySteps = (): EngineError =>
+  outsideDomain("outbreak.infectiousPeriod", "must be longer beside the length of this course: with periods this short it takes more than 100,000 steps");

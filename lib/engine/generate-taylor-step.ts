@@ -1,15 +1,14 @@
 /**
  * Writes taylor-step.generated.ts: one step of the Taylor-series method with every coefficient in a local variable.
- * Loops over typed arrays cost three to five times as much, so the source is written out and kept; a test runs this
- * program again and compares. Run it with: npx tsx lib/engine/generate-taylor-step.ts
+ * Loops over typed arrays cost three to five times as much, so the source is written out and kept; a test compares it
+ * with what this program writes, and `npx vitest run --project unit tests/unit/engine/taylor-step -u` writes it anew.
  */
 export const ORDER = 14;
 
 const range = (from: number, to: number) => Array.from({ length: Math.max(0, to - from + 1) }, (_, i) => from + i);
 
-function horner(name: string): string {
-  return range(0, ORDER - 1).reduceRight((inner, k) => (k === ORDER - 1 ? `${name}${k} + h * ${name}${ORDER}` : `${name}${k} + h * (${inner})`), "");
-}
+/** Value at h of the series with coefficients `${name}0` to `${name}${ORDER}`. */
+const horner = (name: string): string => range(0, ORDER - 1).reduceRight((inner, k) => `${name}${k} + h * (${inner})`, `${name}${ORDER}`);
 
 function stepSource(latent: boolean): string {
   const lines: string[] = [];
@@ -17,19 +16,19 @@ function stepSource(latent: boolean): string {
   lines.push(
     "/**",
     ` * One step of order ${ORDER}, ${latent ? "with" : "without"} a latent stage; advances y in place. Shares of the population, days.`,
-    ` * @param y [susceptible${latent ? ", latent" : ", 0"}, infectious]`,
+    ` * @param y [susceptible${latent ? ", latent" : ", 0"}, infectious, removed since day 0]`,
     " * @param c receives the Taylor coefficients of the infectious share about the step's start",
     " * @returns days stepped, at most hMax",
     " */",
     `export function ${latent ? "stepWithLatent" : "stepWithoutLatent"}(y: Float64Array, c: Float64Array, beta: number, sigma: number, gamma: number, hMax: number, tolerance: number): number {`,
-    `  const s0 = y[0]!, ${latent ? "e0 = y[1]!, " : ""}i0 = y[2]!;`,
+    `  const s0 = y[0]!, ${latent ? "e0 = y[1]!, " : ""}i0 = y[2]!, z0 = y[3]!;`,
   );
   for (const k of range(0, ORDER - 1)) {
     const convolution = range(0, k).map((j) => `s${j} * i${k - j}`).join(" + ");
     const over = k === 0 ? "" : ` * ${1 / (k + 1)}`;
-    lines.push(`  const n${k} = beta * (${convolution});`, `  const s${k + 1} = -n${k}${over};`);
-    if (latent) lines.push(`  const o${k} = sigma * e${k};`, `  const e${k + 1} = (n${k} - o${k})${over};`, `  const i${k + 1} = (o${k} - gamma * i${k})${over};`);
-    else lines.push(`  const i${k + 1} = (n${k} - gamma * i${k})${over};`);
+    lines.push(`  const n${k} = beta * (${convolution})${over};`, `  const s${k + 1} = -n${k};`, `  const z${k + 1} = gamma * i${k}${over};`);
+    if (latent) lines.push(`  const o${k} = sigma * e${k}${over};`, `  const e${k + 1} = n${k} - o${k};`, `  const i${k + 1} = o${k} - z${k + 1};`);
+    else lines.push(`  const i${k + 1} = n${k} - z${k + 1};`);
   }
   const size = (k: number) => `Math.max(Math.abs(s${k}) / s0, (${infected.map((v) => `Math.abs(${v}${k})`).join(" + ")}) / (${infected.map((v) => `${v}0`).join(" + ")}))`;
   lines.push(
@@ -41,6 +40,8 @@ function stepSource(latent: boolean): string {
     `  y[0] = ${horner("s")};`,
     ...(latent ? [`  y[1] = ${horner("e")};`] : []),
     `  y[2] = ${horner("i")};`,
+    // Removals have a series of their own: as the rest to 1 they would lose their digits while they are few.
+    `  y[3] = ${horner("z")};`,
     ...range(0, ORDER).map((k) => `  c[${k}] = i${k};`),
     "  return h;",
     "}",

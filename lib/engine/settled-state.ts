@@ -118,20 +118,16 @@ export const stabilitySlope = (thresholdRatio: number, u: number): number => Mat
 /** Persons; with fewer than this left susceptible, ratios that divide by them say nothing any more. */
 export const SUSCEPTIBLE_LEAST = 1e-9;
 
-/** Persons: a state of the outbreak at one moment. */
+/** A state of the outbreak at one moment, persons; `removed` counts from day 0. */
 export type State = { susceptible: number; latent: number; infectious: number; removed: number };
-
-/** Removals between two states, persons: exactly 0 where nothing has happened yet. */
-export const removedBetween = (from: { susceptible: number; exposed: number; infectious: number }, to: Omit<State, "removed">): number =>
-  from.susceptible - to.susceptible + (from.exposed - to.latent) + (from.infectious - to.infectious);
 
 /**
  * Where a state settles under a constant β: removals still to come, in persons, from this moment to t → ∞.
  * A latent stage changes when, not where.
  */
-export function removalsToCome(state: Omit<State, "removed">, population: number, transmissionRate: number, removalRate: number): Solved {
-  const { susceptible: s, latent, infectious } = state;
-  const infected = latent + infectious;
+export function removalsToCome(state: State, population: number, transmissionRate: number, removalRate: number): Solved {
+  const s = state.susceptible;
+  const infected = state.latent + state.infectious;
   if (infected === 0) return { value: 0, iterations: 0, residual: 0, outcome: "converged" };
   // Nobody is left to be infected: whoever is infected now is all that is to come.
   if (s < SUSCEPTIBLE_LEAST) return { value: infected, iterations: 0, residual: 0, outcome: "converged" };

@@ -3,8 +3,9 @@
  * convolution), in shares of the population, restarted at every switch. `trajectory.ts` checks it.
  * @see Jorba & Zou (2005), Experimental Mathematics 14:99, for the choice of step
  */
+import { tooManySteps } from "./errors";
 import { findRoot } from "./numeric";
-import { removalsToCome, removedBetween } from "./settled-state";
+import { removalsToCome, type State } from "./settled-state";
 import { stepWithLatent, stepWithoutLatent, TAYLOR_ORDER } from "./taylor-step.generated";
 
 /** One draw (or the central run) of what drives the outbreak. Persons, per day, share. */
@@ -20,30 +21,29 @@ export type Parameters = {
   infectionFatality: number;
 };
 
-/** What one run through a schedule leaves behind; the arrays are reused from run to run. */
+/** What one run through a schedule leaves behind; reused from run to run. */
 export type Run = {
-  /** Per piece k: state at its start. Persons. */
-  susceptibleAt: Float64Array;
-  latentAt: Float64Array;
-  infectiousAt: Float64Array;
+  /** Per piece: state at its start, persons; `removed` counts from day 0. */
+  states: State[];
   /** Removals from day 0 to t → ∞, persons, with the last piece for ever. */
   removals: number;
   peakDay: number;
   peakInfectious: number;
-  /** First day from the last switch on with E + I < 1, or the limit; NaN unless asked for. */
+  /** Day from which on E + I stays below 1, ten years at most; NaN unless asked for. */
   dayBelowOne: number;
+  /** Steps taken: the cost of the run. */
+  steps: number;
   converged: boolean;
   residual: number;
 };
 
 export const newRun = (pieces: number): Run => ({
-  susceptibleAt: new Float64Array(pieces),
-  latentAt: new Float64Array(pieces),
-  infectiousAt: new Float64Array(pieces),
+  states: Array.from({ length: pieces }, () => ({ susceptible: 0, latent: 0, infectious: 0, removed: 0 })),
   removals: 0,
   peakDay: 0,
   peakInfectious: 0,
   dayBelowOne: Number.NaN,
+  steps: 0,
   converged: true,
   residual: 0,
 });
@@ -51,119 +51,148 @@ export const newRun = (pieces: number): Run => ({
 export const TEN_YEARS_DAYS = 3650;
 /** Size of the last terms left out, relative to S and to E + I: about 1e-12 of the settled value, at half the steps of 1e-15. */
 const TOLERANCE = 1e-10;
-const STEP_MAX_DAYS = 60;
-/** An outbreak that hasn't peaked by then won't within any use of this. */
-const PEAK_SEARCH_DAYS = 200_000;
+const STEP_DAYS_MAX = 60;
+const STEPS_MAX = 100_000;
+/** Past the last switch, in search of the peak: more than a century with periods of days. */
+const SEARCH_STEPS_MAX = 5_000;
 
-const y = new Float64Array(3);
+const S = 0;
+const E = 1;
+const I = 2;
+const Z = 3;
+const y = new Float64Array(4);
+const stepStart = new Float64Array(4);
+/** Taylor coefficients of the infectious share about the last step's start. */
 const coefficients = new Float64Array(TAYLOR_ORDER + 1);
 
-/** I' about the last step's start, per day. */
-function slopeAt(h: number): number {
-  let sum = 0;
-  for (let k = TAYLOR_ORDER; k >= 1; k--) sum = k * coefficients[k]! + h * sum;
-  return sum;
-}
 function infectiousAt(h: number): number {
   let sum = 0;
   for (let k = TAYLOR_ORDER; k >= 0; k--) sum = coefficients[k]! + h * sum;
   return sum;
 }
+function slopeAt(h: number): number {
+  let sum = 0;
+  for (let k = TAYLOR_ORDER; k >= 1; k--) sum = k * coefficients[k]! + h * sum;
+  return sum;
+}
+
+/** What stays the same during a run. Closures over what changes would cost more than the arithmetic. */
+type Flow = { step: typeof stepWithLatent; population: number; sigma: number; gamma: number; noLatentStage: boolean; wants: Wants };
+type Wants = { peak: boolean; belowOne: boolean };
 
 /**
  * Runs a schedule: piece k holds from starts[k] with factor factors[k] on β; the last piece never ends.
  * @param starts ascending days, starts[0] = 0
- * @param wants whether to look for the peak past the last switch, and for the day with E + I < 1
+ * @param wants whether to look for the peak past the last switch, and for the day from which on E + I < 1
+ * @throws EngineError "outsideDomain" where the periods are so short beside the course that it takes too many steps
  */
-export function followSchedule(p: Parameters, starts: ArrayLike<number>, factors: ArrayLike<number>, wants: { peak: boolean; belowOne: boolean }, run: Run): Run {
+export function followSchedule(p: Parameters, starts: ArrayLike<number>, factors: ArrayLike<number>, wants: Wants, run: Run): Run {
   const n = p.population;
-  const gamma = p.removalRate;
-  const sigma = p.onsetRate ?? 0;
-  const step = p.onsetRate === null ? stepWithoutLatent : stepWithLatent;
+  const flow: Flow = {
+    step: p.onsetRate === null ? stepWithoutLatent : stepWithLatent,
+    population: n,
+    sigma: p.onsetRate ?? 0,
+    gamma: p.removalRate,
+    noLatentStage: p.onsetRate === null,
+    wants,
+  };
   const last = starts.length - 1;
-  y[0] = p.susceptible / n;
-  y[1] = p.exposed / n;
-  y[2] = p.infectious / n;
-  let day = 0;
+  y[S] = p.susceptible / n;
+  y[E] = p.exposed / n;
+  y[I] = p.infectious / n;
+  y[Z] = 0;
+  run.steps = 0;
   run.peakDay = 0;
   run.peakInfectious = p.infectious;
-  run.dayBelowOne = Number.NaN;
+  run.dayBelowOne = wants.belowOne ? 0 : Number.NaN;
 
-  const advance = (beta: number, hMax: number): number => {
-    const h = step(y, coefficients, beta, sigma, gamma, hMax, TOLERANCE);
-    if (wants.peak) {
-      if (y[2]! * n > run.peakInfectious) {
-        run.peakInfectious = y[2]! * n;
-        run.peakDay = day + h;
-      }
-      if (coefficients[1]! > 0 && slopeAt(h) < 0) {
-        const top = findRoot(slopeAt, 0, h, 1e-12);
-        const height = infectiousAt(top) * n;
-        if (height > run.peakInfectious) {
-          run.peakInfectious = height;
-          run.peakDay = day + top;
-        }
-      }
-    }
-    day += h;
-    return h;
-  };
-
-  for (let k = 0; k <= last; k++) {
-    run.susceptibleAt[k] = y[0]! * n;
-    run.latentAt[k] = y[1]! * n;
-    run.infectiousAt[k] = y[2]! * n;
-    if (k === last) break;
+  let day = 0;
+  for (let k = 0; k < last; k++) {
+    noteState(run.states[k]!, n);
     const beta = p.transmissionRate * factors[k]!;
     const end = starts[k + 1]!;
     // The last step is taken to the switch itself, so that no rounding of the day is left.
     for (let left = end - day; left > 0; left = end - day) {
-      const h = advance(beta, Math.min(left, STEP_MAX_DAYS));
+      const h = advance(flow, run, beta, day, Math.min(left, STEP_DAYS_MAX));
       if (h === left) break;
+      day += h;
     }
     day = end;
   }
 
-  const s = run.susceptibleAt[last]!;
-  const latent = run.latentAt[last]!;
-  const infectious = run.infectiousAt[last]!;
   const beta = p.transmissionRate * factors[last]!;
-  const state = { susceptible: s, latent, infectious };
-  const solved = removalsToCome(state, n, beta, gamma);
-  run.removals = removedBetween(p, state) + solved.value;
+  const state = run.states[last]!;
+  noteState(state, n);
+  const solved = removalsToCome(state, n, beta, flow.gamma);
+  run.removals = state.removed + solved.value;
   run.converged = solved.outcome === "converged";
   run.residual = solved.residual;
-
-  // Once the effective ratio is above 1 and I falls, it falls for good: E/I moves monotonically to its final ratio.
-  const rising = () => beta * y[0]! > gamma || (p.onsetRate === null ? beta * y[0]! * y[2]! : sigma * y[1]!) > gamma * y[2]!;
-  if (wants.peak) while (rising() && day < PEAK_SEARCH_DAYS && (y[1]! + y[2]!) * n > 1e-9) advance(beta, STEP_MAX_DAYS);
-  if (wants.belowOne) run.dayBelowOne = dayBelowOne(p, starts[last]!, run, beta, step, sigma);
+  if (wants.belowOne) day = followUntilBelowOne(flow, run, beta, day);
+  if (wants.peak) followUntilFalling(flow, run, beta, day);
+  if (wants.belowOne) run.dayBelowOne = Math.min(run.dayBelowOne, TEN_YEARS_DAYS);
   return run;
 }
 
-type Step = typeof stepWithLatent;
+function noteState(state: State, population: number): void {
+  state.susceptible = y[S]! * population;
+  state.latent = y[E]! * population;
+  state.infectious = y[I]! * population;
+  state.removed = y[Z]! * population;
+}
 
-function dayBelowOne(p: Parameters, from: number, run: Run, beta: number, step: Step, sigma: number): number {
-  const last = run.susceptibleAt.length - 1;
-  const n = p.population;
-  y[0] = run.susceptibleAt[last]! / n;
-  y[1] = run.latentAt[last]! / n;
-  y[2] = run.infectiousAt[last]! / n;
-  let day = from;
-  const limit = Math.max(from, TEN_YEARS_DAYS);
-  while ((y[1]! + y[2]!) * n >= 1) {
-    if (day >= limit) return limit;
-    const before = [y[0]!, y[1]!, y[2]!] as const;
-    const h = step(y, coefficients, beta, sigma, p.removalRate, Math.min(STEP_MAX_DAYS, limit - day), TOLERANCE);
-    if ((y[1]! + y[2]!) * n < 1) {
-      const infectedAfter = (part: number) => {
-        y.set(before);
-        if (part > 0) step(y, coefficients, beta, sigma, p.removalRate, part, TOLERANCE);
-        return (y[1]! + y[2]!) * n - 1;
-      };
-      return day + findRoot(infectedAfter, 0, h, 1e-9);
-    }
-    day += h;
+/** One step from `day`, with what is to be noted on the way. Returns its length. */
+function advance(flow: Flow, run: Run, beta: number, day: number, daysMax: number): number {
+  if (++run.steps > STEPS_MAX) throw tooManySteps();
+  if (flow.wants.belowOne) stepStart.set(y);
+  const h = flow.step(y, coefficients, beta, flow.sigma, flow.gamma, daysMax, TOLERANCE);
+  if (flow.wants.peak) notePeak(run, flow.population, day, h);
+  if (flow.wants.belowOne) noteBelowOne(flow, run, beta, day, h);
+  return h;
+}
+
+function notePeak(run: Run, population: number, day: number, h: number): void {
+  const inside = coefficients[1]! > 0 && slopeAt(h) < 0;
+  const at = inside ? findRoot(slopeAt, 0, h, 1e-12) : h;
+  const height = (inside ? infectiousAt(at) : y[I]!) * population;
+  if (height > run.peakInfectious) {
+    run.peakInfectious = height;
+    run.peakDay = day + at;
   }
+}
+
+/** E + I rises while βS > γ and falls afterwards, so that it can leave a step below 1 only past its top in that step. */
+function noteBelowOne(flow: Flow, run: Run, beta: number, day: number, h: number): void {
+  const one = 1 / flow.population;
+  if (y[E]! + y[I]! >= one) {
+    run.dayBelowOne = Number.POSITIVE_INFINITY;
+    return;
+  }
+  const within = (part: number): Float64Array => {
+    y.set(stepStart);
+    if (part > 0) flow.step(y, coefficients, beta, flow.sigma, flow.gamma, part, TOLERANCE);
+    return y;
+  };
+  const infectedBeyondOne = (part: number) => within(part)[E]! + y[I]! - one;
+  const wasAbove = stepStart[E]! + stepStart[I]! >= one;
+  const turns = !wasAbove && beta * stepStart[S]! > flow.gamma && beta * y[S]! < flow.gamma;
+  const top = turns ? findRoot((part) => beta * within(part)[S]! - flow.gamma, 0, h, 1e-9) : 0;
+  if (wasAbove || (turns && infectedBeyondOne(top) >= 0)) run.dayBelowOne = day + findRoot(infectedBeyondOne, top, h, 1e-9);
+  within(h);
+}
+
+const grows = (flow: Flow, beta: number) => beta * y[S]! > flow.gamma;
+const infectiousRise = (flow: Flow, beta: number) => (flow.noLatentStage ? beta * y[S]! * y[I]! : flow.sigma * y[E]!) > flow.gamma * y[I]!;
+
+/** Ten years at most, so that this ends; those still infected and an outbreak that grows are what is left to charge for. */
+function followUntilBelowOne(flow: Flow, run: Run, beta: number, from: number): number {
+  let day = from;
+  while (day < TEN_YEARS_DAYS && (grows(flow, beta) || y[E]! + y[I]! >= 1 / flow.population)) day += advance(flow, run, beta, day, STEP_DAYS_MAX);
   return day;
+}
+
+/** Once the effective ratio is above 1 and I falls, it falls for good: I/E then moves one way to its final value. */
+function followUntilFalling(flow: Flow, run: Run, beta: number, from: number): void {
+  let day = from;
+  const climbs = () => y[E]! + y[I]! > 0 && (grows(flow, beta) || infectiousRise(flow, beta));
+  for (let left = SEARCH_STEPS_MAX; left > 0 && climbs(); left--) day += advance(flow, run, beta, day, STEP_DAYS_MAX);
 }

@@ -1,123 +1,131 @@
 /**
  * The trajectory that is drawn and frozen: extrapolation method with dense output (odex), restarted at every switch,
- * since its step control assumes a smooth right side. Independent of `taylor-kernel.ts`, which it checks.
+ * since its step control assumes a smooth right side. Independent of `taylor-kernel.ts`, which it checks: it follows
+ * logarithms, which cannot turn negative and keep their digits where few are infected,
+ *
+ *     x = ln(S/S₀),  w = ln(E + I),  θ = I/(E + I):   x' = −βθe^w/N,   w' = θ(βS/N − γ),   θ' = σ(1 − θ) − γθ − θw'
+ *
+ * and takes removals from them without a difference of large numbers: Z' = −(γN/β) x while β is constant.
  * @see Hairer, Nørsett & Wanner (1993), Solving Ordinary Differential Equations I, II.9
  */
-import { Outcome, Solver } from "./odex-solver.mjs";
-import { EngineError } from "./errors";
+import { EngineError, tooManySteps } from "./errors";
 import { findRoot } from "./numeric";
-import { removalsToCome, removedBetween } from "./settled-state";
+import { Outcome, Solver } from "./odex-solver.mjs";
+import { removalsToCome, type State } from "./settled-state";
 import type { Parameters } from "./taylor-kernel";
 import type { CoursePoint } from "./types";
 
 export type Trajectory = {
   course: CoursePoint[];
   peak: { day: number; infectious: number };
-  /** State at the start of each piece, persons. */
-  states: { susceptible: number; latent: number; infectious: number }[];
+  /** False where growth is so slow that the peak lies beyond the search. */
+  peakFound: boolean;
+  /** State at the start of each piece. */
+  states: State[];
   /** Removals from day 0 to t → ∞, persons. */
   removals: number;
   /** Susceptible at t → ∞, persons. */
   susceptibleLeft: number;
 };
 
-const RELATIVE_TOLERANCE = 1e-11;
-const PEAK_SEARCH_DAYS = 200_000;
-const S = 0;
-const E = 1;
-const I = 2;
+const TOLERANCE = 1e-12;
+/** Past the last switch, in search of the peak: more than a century. */
+const SEARCH_DAYS = 40_000;
+const STEPS_MAX = 100_000;
+const X = 0;
+const W = 1;
+const THETA = 2;
 
 /**
  * @param starts ascending days, starts[0] = 0; piece k holds from starts[k] with factor factors[k] on β
  * @param horizonDays whole days 0…horizon are put in `course`
- * @throws EngineError "notConverged" where a step of the solver fails
+ * @throws EngineError "notConverged" where the solver fails; "outsideDomain" where it takes too many steps
  */
 export function trajectory(p: Parameters, starts: readonly number[], factors: readonly number[], horizonDays: number): Trajectory {
+  const { population: n, removalRate: gamma, onsetRate: sigma, infectionFatality: phi } = p;
+  const infectedAtStart = p.exposed + p.infectious;
   const course: CoursePoint[] = [];
-  const states: Trajectory["states"] = [];
+  const states: State[] = [];
   const peak = { day: 0, infectious: p.infectious };
-  const n = p.population;
-  let y = [p.susceptible, p.exposed, p.infectious];
+  let y = [0, Math.log(infectedAtStart), sigma === null ? 1 : p.infectious / infectedAtStart];
+  let beta = 0;
+  /** Removals before the piece under way, and x at its start. */
+  const before = { removed: 0, x: 0 };
   let nextDay = 0;
 
-  const record = (day: number, at: (component: number) => number) => {
-    const [s, e, i] = [at(S), at(E), at(I)];
-    course.push({
-      day,
-      susceptible: s,
-      latent: e,
-      infectious: i,
-      deathsPerDay: p.infectionFatality * p.removalRate * i,
-      cumulativeDeaths: p.infectionFatality * Math.max(0, removedBetween(p, { susceptible: s, latent: e, infectious: i })),
-    });
+  const stateFrom = (x: number, w: number, theta: number): State => {
+    const infected = Math.exp(w);
+    return {
+      susceptible: p.susceptible * Math.exp(x),
+      latent: (1 - theta) * infected,
+      infectious: theta * infected,
+      removed: before.removed + (gamma * n * (before.x - x)) / beta,
+    };
   };
-  const raise = (day: number, infectious: number) => {
-    if (infectious > peak.infectious) Object.assign(peak, { day, infectious });
-  };
+  const record = (day: number, { susceptible, latent, infectious, removed }: State) =>
+    course.push({ day, susceptible, latent, infectious, deathsPerDay: phi * gamma * infectious, cumulativeDeaths: phi * removed });
+  /** Sign of I'. */
+  const slope = (x: number, theta: number) => (sigma === null ? beta * p.susceptible * Math.exp(x) - gamma * n : sigma * (1 - theta) - gamma * theta);
+  const grows = () => beta * p.susceptible * Math.exp(y[X]!) > gamma * n;
 
   /** Integrates from `from` to `to`; `stop` may end it early after a step. */
-  const integrate = (from: number, to: number, beta: number, stop: (state: readonly number[]) => boolean): number => {
-    const inflow = (s: number, e: number, i: number) => (p.onsetRate === null ? (beta * s * i) / n : p.onsetRate * e);
-    const slope = (s: number, e: number, i: number) => inflow(s, e, i) - p.removalRate * i;
+  const integrate = (from: number, to: number, stop: () => boolean): number => {
     const solver = new Solver(3);
-    solver.relativeTolerance = RELATIVE_TOLERANCE;
-    solver.absoluteTolerance = [n * 1e-13, 1e-11, 1e-11];
+    solver.relativeTolerance = TOLERANCE;
+    // x is as small as the share infected, and so must be its error, for few deaths to keep their digits.
+    solver.absoluteTolerance = [(TOLERANCE * infectedAtStart) / n, TOLERANCE, TOLERANCE];
     solver.denseOutput = true;
-    solver.maxSteps = 100_000;
+    solver.maxSteps = STEPS_MAX;
     solver.initialStepSize = Math.min(0.1, (to - from) / 4);
     let reached = to;
     const { y: end, outcome } = solver.solve(
-      (_x, [s, e, i]) => {
-        const infections = (beta * s! * i!) / n;
-        const onsets = p.onsetRate === null ? infections : p.onsetRate * e!;
-        return [-infections, p.onsetRate === null ? 0 : infections - onsets, onsets - p.removalRate * i!];
+      (_day, [x, w, theta]) => {
+        const growth = theta! * ((beta * p.susceptible * Math.exp(x!)) / n - gamma);
+        return [(-beta * theta! * Math.exp(w!)) / n, growth, sigma === null ? 0 : sigma * (1 - theta!) - gamma * theta! - theta! * growth];
       },
       from,
       y,
       to,
-      (_step, xOld, x, state, dense) => {
-        if (x === xOld) return undefined;
+      (_step, dayBefore, day, state, dense) => {
+        if (day === dayBefore) return undefined;
         // Dense output is read inside this callback only: the solver reuses its arrays afterwards.
-        const at = (day: number) => (component: number) => (day >= x ? state[component]! : dense(component, day));
-        for (; nextDay <= horizonDays && nextDay <= x; nextDay++) record(nextDay, at(nextDay));
-        const rate = (day: number) => slope(at(day)(S), at(day)(E), at(day)(I));
-        if (rate(xOld) > 0 && rate(x) < 0) {
-          const top = findRoot(rate, xOld, x, 1e-10);
-          raise(top, at(top)(I));
-        }
-        raise(x, state[I]!);
-        if (stop(state)) {
-          reached = x;
-          y = state.slice(0, 3);
-          return false;
-        }
-        return undefined;
+        const at = (t: number) => (t >= day ? stateFrom(state[X]!, state[W]!, state[THETA]!) : stateFrom(dense(X, t), dense(W, t), dense(THETA, t)));
+        for (; nextDay <= horizonDays && nextDay <= day; nextDay++) record(nextDay, at(nextDay));
+        const slopeAt = (t: number) => (t >= day ? slope(state[X]!, state[THETA]!) : slope(dense(X, t), dense(THETA, t)));
+        const top = slopeAt(dayBefore) > 0 && slopeAt(day) < 0 ? findRoot(slopeAt, dayBefore, day, 1e-10) : day;
+        const { infectious } = at(top);
+        if (infectious > peak.infectious) Object.assign(peak, { day: top, infectious });
+        y = state.slice(0, 3);
+        if (!stop()) return undefined;
+        reached = day;
+        return false;
       },
     );
-    if (outcome === Outcome.MaxStepsExceeded || end.some((value) => !Number.isFinite(value))) throw new EngineError("notConverged");
-    if (outcome === Outcome.Converged) y = end.slice(0, 3);
+    if (outcome === Outcome.MaxStepsExceeded) throw tooManySteps();
+    if (end.some((value) => !Number.isFinite(value))) throw new EngineError("notConverged");
     return reached;
   };
 
   const last = starts.length - 1;
-  record(nextDay++, (component) => y[component]!);
-  for (let k = 0; k < last; k++) {
-    states.push({ susceptible: y[S]!, latent: y[E]!, infectious: y[I]! });
-    integrate(starts[k]!, starts[k + 1]!, p.transmissionRate * factors[k]!, () => false);
+  for (const [k, start] of starts.entries()) {
+    const removed = k === 0 ? 0 : stateFrom(y[X]!, y[W]!, y[THETA]!).removed;
+    Object.assign(before, { removed, x: y[X]! });
+    beta = p.transmissionRate * factors[k]!;
+    const state = stateFrom(y[X]!, y[W]!, y[THETA]!);
+    states.push(state);
+    if (k === 0) record(nextDay++, state);
+    if (k < last) integrate(start, starts[k + 1]!, () => false);
   }
-  const beta = p.transmissionRate * factors[last]!;
-  const final = { susceptible: y[S]!, latent: y[E]!, infectious: y[I]! };
-  states.push(final);
-  const solved = removalsToCome(final, n, beta, p.removalRate);
+  const final = states[last]!;
+  const solved = removalsToCome(final, n, beta, gamma);
   if (solved.outcome !== "converged") throw new EngineError("notConverged");
-
   // S∞ = S e^(−u*), with u* = removals to come × β/(γN): no difference of large numbers.
-  const susceptibleLeft = final.susceptible * Math.exp((-solved.value * beta) / (p.removalRate * n));
+  const susceptibleLeft = final.susceptible * Math.exp((-solved.value * beta) / (gamma * n));
+
   // Past the last switch only for the drawing and the peak: where it settles is already known.
-  const falling = ([s, e, i]: readonly number[]) =>
-    beta * s! <= p.removalRate * n && (p.onsetRate === null ? (beta * s! * i!) / n : p.onsetRate * e!) <= p.removalRate * i!;
+  const falls = () => !grows() && slope(y[X]!, y[THETA]!) <= 0;
   let day = starts[last]!;
-  if (day < horizonDays) day = integrate(day, horizonDays, beta, () => false);
-  if (!falling(y)) integrate(day, PEAK_SEARCH_DAYS, beta, (state) => falling(state) || state[E]! + state[I]! < 1e-9);
-  return { course, peak, states, removals: removedBetween(p, final) + solved.value, susceptibleLeft };
+  if (day < horizonDays) day = integrate(day, horizonDays, () => false);
+  if (!falls()) integrate(day, day + SEARCH_DAYS, falls);
+  return { course, peak, peakFound: falls(), states, removals: final.removed + solved.value, susceptibleLeft };
 }

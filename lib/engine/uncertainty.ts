@@ -102,7 +102,7 @@ function drawPackage(p: Parameters, plan: Plan, tariff: Tariff, held: Held, deat
   const k = plan.strongest;
   const phi = p.infectionFatality;
   const scheduled = phi * run.removals;
-  const toEnd = phi * removalsHeld(p, { susceptible: run.susceptibleAt[k]!, latent: run.latentAt[k]!, infectious: run.infectiousAt[k]! }, factors[k]!).value;
+  const toEnd = phi * removalsHeld(p, run.states[k]!, factors[k]!).value;
   figures.thresholdRatio[row] = thresholdRatioOf(p, p.susceptible, factors[k]!);
   figures.asScheduled[row] = scheduled;
   figures.heldToEnd[row] = toEnd;
@@ -115,10 +115,11 @@ function drawPackage(p: Parameters, plan: Plan, tariff: Tariff, held: Held, deat
   figures.total[row] = cost.total;
   for (const payer of PAYERS) figures[payer][row] = cost.byPayer[payer];
   for (let piece = 0; piece < plan.pieces.length; piece++) {
-    if (thresholdRatioOf(p, run.susceptibleAt[piece]!, factors[piece]!) >= 1) held.shrinks[piece]! += 1;
+    if (thresholdRatioOf(p, run.states[piece]!.susceptible, factors[piece]!) >= 1) held.shrinks[piece]! += 1;
     if (piece + 1 < plan.pieces.length) {
-      const after = thresholdRatioOf(p, run.susceptibleAt[piece + 1]!, factors[piece + 1]!);
-      held.ends[piece]![row] = chanceChainsEnd(after, run.latentAt[piece + 1]! + run.infectiousAt[piece + 1]!);
+      const next = run.states[piece + 1]!;
+      const after = thresholdRatioOf(p, next.susceptible, factors[piece + 1]!);
+      held.ends[piece]![row] = chanceChainsEnd(after, next.latent + next.infectious);
     }
   }
 }
