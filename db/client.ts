@@ -42,6 +42,8 @@ function pool(kind: Kind): Pool {
 
 const lazily = (kind: Kind) =>
   new Proxy({} as Pool["db"], {
+    // Libraries ask what kind of database this is by its prototype.
+    getPrototypeOf: () => Object.getPrototypeOf(pool(kind).db),
     get: (_, property) => {
       const target = pool(kind).db;
       const value = Reflect.get(target, property, target);

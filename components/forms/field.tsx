@@ -88,8 +88,8 @@ export function SelectField(props: Shared & { options: { value: string; label: s
   );
 }
 
-export function CheckboxField(props: Shared) {
-  const { key, ...input } = getInputProps(props.meta as FieldMetadata<boolean>, { type: "checkbox" });
+export function CheckboxField(props: Shared & { value?: string }) {
+  const { key, ...input } = getInputProps(props.meta as FieldMetadata<boolean>, { type: "checkbox", ...(props.value ? { value: props.value } : {}) });
   return (
     <div className={props.className}>
       <label className="flex items-start gap-3 font-normal">

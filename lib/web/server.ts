@@ -59,6 +59,10 @@ async function answer(request: IncomingMessage, response: ServerResponse): Promi
   }
   // Next adds forwarding headers of its own, so what came from outside is noted here.
   if (direct) request.headers["x-ebbmark-direct"] = "1";
+  // A layout can't read the query, and the page's language is the layout's to say.
+  delete request.headers["x-ebbmark-lang"];
+  const language = /[?&]lang=([a-z]{2})(?:&|$)/.exec(request.url ?? "")?.[1];
+  if (language) request.headers["x-ebbmark-lang"] = language;
   request.headers["x-request-id"] = randomUUID();
   response.setHeader("X-Request-Id", request.headers["x-request-id"]);
 

@@ -1,24 +1,21 @@
-import { and, eq, gt } from "drizzle-orm";
 import { cookies, headers } from "next/headers";
 import { redirect } from "next/navigation";
+import { getServerSession } from "next-auth";
 import { cache } from "react";
-import { db } from "@/db/client";
-import { sessions, users } from "@/db/schema";
+import { sessionCookieName } from "@/lib/auth/constants";
+import { authOptions } from "@/lib/auth/options";
 import { can, type Permission } from "@/lib/auth/permissions";
 import type { Actor, StaffCtx } from "@/lib/context";
+import { env } from "@/lib/env";
 
-export const SESSION_COOKIE = "ebbmark.session";
+export const sessionCookie = (): string => sessionCookieName(env().EBBMARK_URL.startsWith("https:"));
 
-/** The signed-in member of staff, or null. One query per request. */
+/** The signed-in member of staff, or null. Read once per request. */
 export const findStaff = cache(async (): Promise<Actor | null> => {
-  const token = (await cookies()).get(SESSION_COOKIE)?.value;
-  if (!token) return null;
-  const [row] = await db
-    .select({ id: users.id, name: users.name, email: users.email, role: users.role, locale: users.locale })
-    .from(sessions)
-    .innerJoin(users, eq(users.id, sessions.userId))
-    .where(and(eq(sessions.sessionToken, token), gt(sessions.expires, new Date()), eq(users.status, "active")));
-  return row ? { kind: "staff", ...row } : null;
+  // The library would look for its cookie anyway; without one there is nothing to ask the database.
+  if (!(await cookies()).get(sessionCookie())) return null;
+  const session = await getServerSession(authOptions());
+  return session?.staff ? { kind: "staff", ...session.staff } : null;
 });
 
 /** For pages: sends a signed-out reader to sign-in, and one without the permission to the page that says so. */

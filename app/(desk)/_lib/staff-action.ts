@@ -4,6 +4,8 @@ import { headers } from "next/headers";
 import { redirect } from "next/navigation";
 import { getTranslations } from "next-intl/server";
 import type { z } from "zod";
+import type { Permission } from "@/lib/auth/permissions";
+import { requirePermission } from "@/lib/auth/require-permission";
 import type { StaffCtx } from "@/lib/context";
 import { env } from "@/lib/env";
 import { DomainError } from "@/lib/errors";
@@ -18,11 +20,12 @@ export async function requireSameOrigin(): Promise<void> {
 }
 
 /**
- * Makes a server action: same origin, session, parse, run, and refusals mapped to the form in one place.
- * `run` ends with `redirect(…)`, or returns nothing to show the form as saved. Permissions are the command's first beat.
- * `schema` may be a function of nothing where its messages need translating.
+ * Makes a server action: same origin, session, permission, parse, run, and refusals mapped to the form in one place.
+ * `run` ends with `redirect(…)`, or returns nothing to show the form as saved. The command asks for its permission
+ * again; here it comes before the input, so that nobody learns from a refused form what a form would accept.
  */
 export function staffAction<S extends z.ZodType>(
+  permission: Permission,
   schema: S,
   run: (ctx: StaffCtx, input: z.output<S>) => Promise<void>,
 ): (previous: ActionState, formData: FormData) => Promise<ActionState> {
@@ -33,6 +36,7 @@ export function staffAction<S extends z.ZodType>(
       await requireSameOrigin();
       const actor = await findStaff();
       if (!actor) redirect("/sign-in");
+      requirePermission(actor, permission);
       if (submission.status !== "success") return submission.reply();
       await run(await staffCtx(actor), submission.value as z.output<S>);
       return submission.reply();
