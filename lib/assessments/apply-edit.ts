@@ -6,13 +6,13 @@ import type { SourcePackage, Sources } from "./to-input";
 type Item = SourcePackage["items"][number];
 
 /** Lines as edited on the lines as saved. A line that was saved meanwhile by somebody else makes it a conflict. */
-function editedItem(saved: Item | undefined, edited: EditedItem, dayZero: string): Item {
+function editedItem(saved: Item | undefined, edited: EditedItem, dayZero: string, shiftDays: number): Item {
   if (!saved || saved.measureId !== edited.measureId || edited.from === undefined) throw new DomainError("conflict");
   return {
     measureId: saved.measureId,
     uptake: edited.uptakePercent === undefined ? saved.uptake : edited.uptakePercent / 100,
-    startDay: dayOf(dayZero, edited.from),
-    endDay: edited.to === undefined ? null : dayOf(dayZero, edited.to) + 1,
+    startDay: dayOf(dayZero, edited.from) + shiftDays,
+    endDay: edited.to === undefined ? null : dayOf(dayZero, edited.to) + 1 + shiftDays,
   };
 }
 
@@ -29,7 +29,7 @@ export function applyEdit(sources: Omit<Sources, "packages" | "settings">, all: 
     const edited = edit.packages.find((each) => each.letter === letter);
     if (!edited) return saved;
     if (edited.version !== saved.version || edited.items.length !== saved.items.length) throw new DomainError("conflict", { letter });
-    return { ...saved, items: edited.items.map((item, index) => editedItem(saved.items[index], item, sources.outbreak.dayZero)) };
+    return { ...saved, items: edited.items.map((item, index) => editedItem(saved.items[index], item, sources.outbreak.dayZero, edited.shiftDays)) };
   });
   return { ...sources, packages, settings: { draws: edit.draws, seed: edit.seed, horizonDays: edit.horizonDays } };
 }

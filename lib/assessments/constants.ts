@@ -12,6 +12,8 @@ export const REASON_MIN = 10;
 export const REASON_MAX = 1_000;
 /** Last day a schedule may name, counted from day 0. */
 export const SCHEDULE_DAYS_MAX = 3_650;
+/** How far a whole package may be moved at once. */
+export const SHIFT_DAYS_MAX = 365;
 
 export const PACKAGE_LETTERS = ["A", "B", "C", "D", "E", "F", "G", "H"] as const;
 

@@ -10,6 +10,7 @@ import type { AssessmentInput, AssessmentResult } from "@/lib/engine/types";
 import { DomainError } from "@/lib/errors";
 import { SNAPSHOT_VERSION } from "./constants";
 import { reasonsAgainstFreezing } from "./freeze-rules";
+import { objectHashOf } from "./object-hash";
 import { findFrozen, getAssessment } from "./queries";
 import { FreezeAssessmentInput } from "./schema";
 import { toContext } from "./to-context";
@@ -65,10 +66,6 @@ export async function freezeAssessment(ctx: Ctx, raw: unknown, compute: Compute 
     return { id, objectHash };
   });
 }
-
-/** What the register binds: SHA-256 over the three hashes, joined by "|". */
-export const objectHashOf = ({ inputHash, resultHash, contextHash }: { inputHash: string; resultHash: string; contextHash: string }): string =>
-  sha256Hex(`${inputHash}|${resultHash}|${contextHash}`);
 
 async function filesNow(id: string, tx?: Tx) {
   if (await findFrozen(id, tx)) throw new DomainError("frozen", { assessmentId: id });

@@ -2,7 +2,7 @@ import { z } from "zod";
 import { dayOf } from "./days";
 import {
   DRAWS_MAX, DRAWS_MIN, HORIZON_DAYS_MAX, HORIZON_DAYS_MIN, PACKAGE_LETTERS, PACKAGES_MAX, REASON_MAX, REASON_MIN,
-  SCHEDULE_DAYS_MAX, SEED_MAX, TITLE_MAX,
+  SCHEDULE_DAYS_MAX, SEED_MAX, SHIFT_DAYS_MAX, TITLE_MAX,
 } from "./constants";
 
 const digits = (value: number) => value.toLocaleString("en-GB");
@@ -14,10 +14,11 @@ const plain = (value: unknown) => {
   return text === "" ? undefined : /^-?\d+(\.\d+)?$/.test(text) ? Number(text) : Number.NaN;
 };
 const range = (min: number, max: number, what: string) => `Must be ${what} from ${digits(min)} to ${digits(max)}.`;
-const whole = (min: number, max: number) => {
+const wholeNumber = (min: number, max: number) => {
   const words = range(min, max, "a whole number");
-  return z.preprocess(plain, z.number(words).refine((value) => Number.isInteger(value) && value >= min && value <= max, words));
+  return z.number(words).refine((value) => Number.isInteger(value) && value >= min && value <= max, words);
 };
+const whole = (min: number, max: number) => z.preprocess(plain, wholeNumber(min, max));
 
 const id = z.uuid("This assessment doesn't exist.");
 const version = z.coerce.number("Reload the page: it doesn't say which state you saw.").int().min(1);
@@ -65,6 +66,8 @@ export type EditedItem = z.infer<typeof EditedItem>;
 const EditedPackage = z.object({
   letter: z.enum(PACKAGE_LETTERS),
   version: z.coerce.number().int().min(1),
+  /** Moves every date of the package; minus is earlier. */
+  shiftDays: z.preprocess((value) => plain(typeof value === "string" ? value.replace("−", "-") : value), wholeNumber(-SHIFT_DAYS_MAX, SHIFT_DAYS_MAX).default(0)),
   items: z.array(EditedItem).max(200).default([]),
 });
 export type EditedPackage = z.infer<typeof EditedPackage>;
@@ -82,15 +85,15 @@ export const EditAssessmentInput = z
     packages: z.array(EditedPackage).max(PACKAGES_MAX).default([]),
   })
   .superRefine(({ dayZero, packages }, context) => {
-    packages.forEach(({ items }, p) => {
+    packages.forEach(({ items, shiftDays }, p) => {
       items.forEach(({ from, to }, i) => {
-        const at = (field: string) => ["packages", p, "items", i, field];
-        const start = from === undefined ? 0 : dayOf(dayZero, from);
-        if (start < 0) context.addIssue({ code: "custom", path: at("from"), message: `Must be on or after day 0, ${dayZero}.` });
-        if (start > SCHEDULE_DAYS_MAX) context.addIssue({ code: "custom", path: at("from"), message: `Must be within ${digits(SCHEDULE_DAYS_MAX)} days of day 0, ${dayZero}.` });
-        if (to === undefined) return;
-        if (from !== undefined && to < from) context.addIssue({ code: "custom", path: at("to"), message: `Must be on or after the first day in force, ${from}.` });
-        if (dayOf(dayZero, to) > SCHEDULE_DAYS_MAX) context.addIssue({ code: "custom", path: at("to"), message: `Must be within ${digits(SCHEDULE_DAYS_MAX)} days of day 0, ${dayZero}.` });
+        const refuse = (field: "from" | "to", message: string) => context.addIssue({ code: "custom", path: ["packages", p, "items", i, field], message });
+        const moved = shiftDays === 0 ? "" : ", moved dates included";
+        if (from !== undefined && dayOf(dayZero, from) + shiftDays < 0) refuse("from", `Must be on or after day 0, ${dayZero}${moved}.`);
+        for (const [field, date] of [["from", from], ["to", to]] as const) {
+          if (date !== undefined && dayOf(dayZero, date) + shiftDays > SCHEDULE_DAYS_MAX) refuse(field, `Must be within ${digits(SCHEDULE_DAYS_MAX)} days of day 0, ${dayZero}${moved}.`);
+        }
+        if (from !== undefined && to !== undefined && to < from) refuse("to", `Must be on or after the first day in force, ${from}.`);
       });
     });
   });

@@ -1,0 +1,6 @@
+import { exportInput } from "@/lib/assessments/export-files";
+import { download } from "../_download";
+
+export async function GET(_: Request, { params }: { params: Promise<{ assessmentId: string }> }): Promise<Response> {
+  return download((await params).assessmentId, exportInput);
+}
