@@ -60,7 +60,7 @@ function MonthScale({ axis, locale, rtl }: { axis: Axis; locale: Locale; rtl: bo
 function Track({ axis, measure, rtl, id, first }: { axis: Axis; measure: RenderedMeasure; rtl: boolean; id: string; first: boolean }) {
   const placed = placeSpan(axis, measure);
   return (
-    <svg className="track" width="100%" height="14" aria-hidden="true">
+    <svg className="ptrack" width="100%" height="14" aria-hidden="true">
       {first ? (
         <g id={id}>
           <line x2="100%" y1="7" y2="7" />

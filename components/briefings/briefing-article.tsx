@@ -107,11 +107,17 @@ function Figures({ content, release, t }: { content: RenderedBriefing; release: 
           </tr>
         </thead>
         <tbody>
-          {content.figures.map(({ ref, label, text }) => (
-            <tr key={ref} id={ref}>
-              <th scope="row">{label}</th>
+          {byOrigin(content.figures).map(([first, ...others]) => (
+            <tr key={first.ref} id={first.ref}>
+              <th scope="row">{first.label}</th>
               <td>
-                <bdi>{text}</bdi>
+                <bdi>{first.text}</bdi>
+                {others.map(({ ref, text }) => (
+                  <bdi key={ref} id={ref} className="iv">
+                    {" "}
+                    {text}
+                  </bdi>
+                ))}
               </td>
             </tr>
           ))}
@@ -124,4 +130,18 @@ function Figures({ content, release, t }: { content: RenderedBriefing; release: 
       ) : null}
     </section>
   );
+}
+
+type Shown = RenderedBriefing["figures"][number];
+
+/** A figure and its interval share a row. */
+function byOrigin(figures: readonly Shown[]): [Shown, ...Shown[]][] {
+  const rows = new Map<string, [Shown, ...Shown[]]>();
+  for (const figure of [...figures].sort((a, b) => Number(a.form === "interval") - Number(b.form === "interval"))) {
+    const key = `${figure.figure} ${figure.package}`;
+    const row = rows.get(key);
+    if (row) row.push(figure);
+    else rows.set(key, [figure]);
+  }
+  return [...rows.values()];
 }

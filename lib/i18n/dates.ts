@@ -39,5 +39,5 @@ export function formatTime(iso: string): string {
 
 /** Short name of a month for an axis. @param iso first day of the month */
 export function monthName(iso: string, locale: Locale): string {
-  return new Intl.DateTimeFormat(dateLocale(locale), { timeZone: "UTC", month: "short" }).format(new Date(iso));
+  return new Intl.DateTimeFormat(numberLocale(locale), { timeZone: "UTC", month: "short" }).format(new Date(iso));
 }
