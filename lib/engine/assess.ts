@@ -1,22 +1,21 @@
 import { hashInput } from "./canonical";
 import { type Check, runPackage, runWithoutMeasures } from "./central-run";
-import { makePlan } from "./measure-effects";
+import { outsideDomain } from "./errors";
+import { LIMITS } from "./limits";
+import { makePlan, type Plan } from "./measure-effects";
+import { inWords } from "./numeric";
+import { figuresPerDraw } from "./one-draw";
 import { outbreakReader } from "./outbreak";
 import { makeTariff, priceComparison } from "./prices";
 import { Draws } from "./quantities";
-import { central, parseAssessmentInput } from "./schema";
-import type { Parameters } from "./taylor-kernel";
-import { growthRateAt } from "./transmission";
-import type { AssessmentInput, AssessmentResult, Diagnostics, Warning } from "./types";
-import { runDraws } from "./uncertainty";
+import { parseAssessmentInput } from "./schema";
+import type { AssessmentInput, AssessmentResult, Diagnostics } from "./types";
+import { type Progress, runDraws } from "./uncertainty";
 import { ENGINE_VERSION } from "./version";
+import { outbreakWarnings } from "./warnings";
 
-export type AssessOptions = {
-  /** Share of the draws done, 0..1. */
-  onProgress?: (share: number) => void;
-  /** Asked between draws; true ends the calculation with EngineError "cancelled". */
-  shouldStop?: () => boolean;
-};
+/** Both are asked and told between draws. */
+export type AssessOptions = Progress;
 
 const HORIZON_DAYS_DEFAULT = 365;
 /** Freezing is refused where the two integrators differ by more than this share of the population. */
@@ -38,6 +37,8 @@ export function assess(raw: AssessmentInput, options: AssessOptions = {}): Asses
   const p = parametersAt(-1);
   const without = runWithoutMeasures(p, horizonDays);
   const packages = plans.map((plan, index) => runPackage(p, plan, tariffs[index]!, without.result, horizonDays));
+  const checks = [without.check, ...packages.map(({ check }) => check)];
+  refuseHours(input, plans, checks);
   const drawn = input.uncertainty ? runDraws(parametersAt, plans, tariffs, input.uncertainty.draws, options) : null;
 
   const results = packages.map(({ result }, index) => ({ ...result, uncertainty: drawn?.packages[index] ?? null }));
@@ -53,8 +54,13 @@ export function assess(raw: AssessmentInput, options: AssessOptions = {}): Asses
     withoutMeasures: { ...without.result, uncertainty: drawn?.without ?? null },
     packages: results,
     comparison: { ...priceComparison(priced), pairs: drawn?.pairs ?? [] },
-    diagnostics: diagnose([without.check, ...packages.map(({ check }) => check)], p.population, drawn?.refusedDraws ?? 0),
-    warnings: outbreakWarnings(input, p, without.result.finalDeaths, drawn?.refusedDraws ?? 0),
+    diagnostics: diagnose(checks, p.population, drawn?.refusedDraws ?? 0),
+    warnings: outbreakWarnings(input, p, {
+      finalDeaths: without.result.finalDeaths,
+      thresholdRatio: without.result.thresholdRatio,
+      refusedDraws: drawn?.refusedDraws ?? 0,
+      peakFound: without.check.peakFound,
+    }),
   };
 }
 
@@ -70,18 +76,13 @@ function diagnose(checks: readonly Check[], population: number, refusedDraws: nu
   };
 }
 
-function outbreakWarnings({ outbreak }: AssessmentInput, p: Parameters, finalDeaths: number, refusedDraws: number): Warning[] {
-  const warnings: Warning[] = [];
-  if (finalDeaths < 10) warnings.push({ code: "chanceDominates", message: "Settled deaths without measures are below 10: chance decides, and the deterministic figure is no forecast." });
-  if (p.infectious > 0.05 * p.population) warnings.push({ code: "manyInfectious", message: "More than 5 % of the population is infectious on day 0: the assumptions about the start are strained.", path: "outbreak.infectious" });
-  if (refusedDraws > 0) warnings.push({ code: "refusedDraws", message: `${refusedDraws} draws lay outside the domain and are left out.` });
-  if (outbreak.exposed !== undefined && p.onsetRate !== null) {
-    const growth = growthRateAt((p.transmissionRate * (p.population - p.removed - p.infectious)) / (p.removalRate * p.population), p as Parameters & { onsetRate: number });
-    const consistent = growth <= -p.removalRate ? 0 : (p.infectious * (growth + p.removalRate)) / p.onsetRate;
-    const given = central(outbreak.exposed);
-    if (given > 2 * consistent + 1 || given < consistent / 2 - 1) {
-      warnings.push({ code: "exposedFarFromGrowth", message: `The number latent (${given}) is far from the ${consistent.toPrecision(3)} that goes with this growth.`, path: "outbreak.exposed" });
-    }
+/** The central run shows what a draw costs: more than minutes, or more than memory, is refused before it starts. */
+function refuseHours({ uncertainty }: AssessmentInput, plans: readonly Plan[], checks: readonly Check[]): void {
+  if (!uncertainty) return;
+  const steps = checks.reduce((sum, check) => sum + check.steps, 0);
+  const numbers = Math.max(0, ...plans.map(({ pieces }) => figuresPerDraw(pieces.length)));
+  const most = Math.floor(Math.min(LIMITS.stepsMax / Math.max(1, steps), LIMITS.numbersMax / Math.max(1, numbers)));
+  if (uncertainty.draws > most) {
+    throw outsideDomain("uncertainty.draws", `must be at most ${inWords(most)} for schedules this long with periods this short`);
   }
-  return warnings;
 }

@@ -4,8 +4,9 @@ export { canonicalJson, hashInput, sha256Hex } from "./canonical";
 export { EngineError, type EngineErrorCode, type Fault } from "./errors";
 export { LIMITS } from "./limits";
 export { PAYERS } from "./prices";
-export { AssessmentInputSchema, central, parseAssessmentInput, TRANSMISSION_RANGE } from "./schema";
-export { otherFixedPoint, type Solved, settledState, stabilitySlope } from "./settled-state";
+export { central } from "./quantities";
+export { AssessmentInputSchema, parseAssessmentInput, TRANSMISSION_RANGE } from "./schema";
+export { otherFixedPoint, type Solved, settledState, settledValue, stabilitySlope } from "./settled-state";
 export {
   chanceChainsEnd,
   chanceOneChainEnds,

@@ -11,11 +11,17 @@ export const LIMITS = {
   cutMin: -1,
   /** Exclusive. */
   cutMax: 1,
+  /** Of what measures in force together leave of transmission. */
+  factorMin: 1e-9,
   costMax: 1e15,
   drawsMin: 100,
   drawsMax: 1_000_000,
   measuresMax: 40,
   packagesMax: 8,
+  /** Draws × steps of the integrator over all packages: some minutes. */
+  stepsMax: 1e9,
+  /** Numbers held at a time for one package: draws × (figures + phases), 800 MB. */
+  numbersMax: 1e8,
   horizonDaysMax: 36_500,
   dayMax: 36_500,
   seedMax: Number.MAX_SAFE_INTEGER,

@@ -13,7 +13,10 @@ export type Plan = {
   strongest: number;
   /** Items that make up "held from day 0": each measure once, of a ladder the rung with the smallest central factor. */
   fromDayZero: number[];
+  /** Some item has no end. */
   neverLifted: boolean;
+  /** There are items, and every one has an end. */
+  endsWithoutMeasures: boolean;
 };
 
 /** Factor of one item on β: m = 1 − uptake × cut. */
@@ -48,7 +51,17 @@ export function makePlan(input: PackageInput, measures: AssessmentInput["measure
     };
   });
   const pieces = piecesOf(input.items);
-  const plan: Plan = { id: input.id, items, pieces, starts: pieces.map((p) => p.fromDay), strongest: 0, fromDayZero: [], neverLifted: items.some((i) => i.endDay === null) };
+  const neverLifted = items.some(({ endDay }) => endDay === null);
+  const plan: Plan = {
+    id: input.id,
+    items,
+    pieces,
+    starts: pieces.map(({ fromDay }) => fromDay),
+    strongest: 0,
+    fromDayZero: [],
+    neverLifted,
+    endsWithoutMeasures: items.length > 0 && !neverLifted,
+  };
   plan.strongest = strongestOf(pieceFactors(plan, -1, new Float64Array(pieces.length)));
   plan.fromDayZero = strongestRungs(plan);
   return plan;

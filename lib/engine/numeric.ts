@@ -1,3 +1,6 @@
+/** A number as a sentence has it: 10,000,000,000. */
+export const inWords = (value: number): string => value.toLocaleString("en-GB", { maximumFractionDigits: 10 });
+
 /**
  * Quantile of an ascending sample, linear between order statistics (type 7 of Hyndman & Fan 1996, Am. Stat. 50:361).
  * @param sorted ascending, at least one value

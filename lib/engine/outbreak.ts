@@ -1,7 +1,6 @@
 import { outsideDomain } from "./errors";
+import type { Parameters } from "./model";
 import { type Draws, positiveScale, type Reader, type Scale, shareScale } from "./quantities";
-import { SUSCEPTIBLE_LEAST } from "./settled-state";
-import type { Parameters } from "./taylor-kernel";
 import { startState } from "./transmission";
 import type { AssessmentInput, TransmissionGiven } from "./types";
 
@@ -43,7 +42,3 @@ export function outbreakReader({ outbreak }: AssessmentInput, draws: Draws): Par
     };
   };
 }
-
-/** b = γN/(βS), the threshold ratio with the given susceptibles and factor on β. */
-export const thresholdRatioOf = (p: Parameters, susceptible = p.susceptible, factor = 1): number =>
-  (p.removalRate * p.population) / (p.transmissionRate * factor * Math.max(susceptible, SUSCEPTIBLE_LEAST));

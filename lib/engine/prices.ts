@@ -1,5 +1,5 @@
 import type { Draws, Reader } from "./quantities";
-import { positiveScale } from "./quantities";
+import { costScale } from "./quantities";
 import type { Plan } from "./measure-effects";
 import type { Comparison, Payer } from "./types";
 
@@ -20,9 +20,9 @@ export function makeTariff(plan: Plan, draws: Draws): Tariff {
         measure: measure.id,
         payer: cost.payer,
         transfer: cost.transfer ?? false,
-        setUp: draws.reader(`${name}.setUp`, cost.setUp ?? 0, positiveScale),
-        perDay: draws.reader(`${name}.perDay`, cost.perDay ?? 0, positiveScale),
-        perResidentDay: draws.reader(`${name}.perResidentDay`, cost.perResidentDay ?? 0, positiveScale),
+        setUp: draws.reader(`${name}.setUp`, cost.setUp ?? 0, costScale),
+        perDay: draws.reader(`${name}.perDay`, cost.perDay ?? 0, costScale),
+        perResidentDay: draws.reader(`${name}.perResidentDay`, cost.perResidentDay ?? 0, costScale),
       };
     }),
   );

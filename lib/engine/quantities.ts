@@ -1,6 +1,8 @@
 import { latinHypercubeScores } from "./random";
-import { central } from "./schema";
 import type { AssessmentInput, Quantity } from "./types";
+
+/** The number itself, or the median of its quantiles. */
+export const central = (value: Quantity): number => (typeof value === "number" ? value : value.central);
 
 /** Φ⁻¹(0.975): low and high are the 2.5 % and 97.5 % quantiles. */
 const Z_975 = 1.959963984540054;
@@ -27,6 +29,8 @@ const FROM: Record<Scale, (x: number) => number> = {
 
 /** Positive quantities on the log scale; those that reach 0 linearly, cut off at 0. */
 export const positiveScale = (low: number): Scale => (low > 0 ? "log" : "linearFromZero");
+/** Costs are laid out linearly, cut off at 0. */
+export const costScale = (): Scale => "linearFromZero";
 /** Shares strictly inside (0, 1) on the logit scale; those that reach an end linearly, cut off there. */
 export const shareScale = (low: number, high: number): Scale => (low > 0 && high < 1 ? "logit" : "linearShare");
 

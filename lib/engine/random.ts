@@ -9,6 +9,15 @@ function hashName(name: string): number {
   return hash | 0;
 }
 
+/** Spreads neighbouring seeds over all 32 bits (multiply, xor, shift, twice): the generator itself starts out close to its seed. */
+function scatter(seed: number): number {
+  let x = seed | 0;
+  x = Math.imul(x ^ (x >>> 16), 0x7feb352d);
+  x = Math.imul(x ^ (x >>> 15), 0x846ca68b);
+  return x ^ (x >>> 16);
+}
+const WARM_UP = 16;
+
 /** 53 random bits in [0, 1). */
 const uniform = (generator: { next(): number }): number =>
   ((generator.next() >>> 5) * 0x400_0000 + (generator.next() >>> 6)) / 2 ** 53;
@@ -22,7 +31,8 @@ const uniform = (generator: { next(): number }): number =>
 export function latinHypercubeScores(count: number, seed: number, name: string): Float64Array {
   const low = seed % 0x1_0000_0000 | 0;
   const high = Math.floor(seed / 0x1_0000_0000) | 0;
-  const generator = xoroshiro128plus(low ^ Math.imul(high, 0x9e3779b1) ^ hashName(name));
+  const generator = xoroshiro128plus(scatter(scatter(scatter(low) ^ high) ^ hashName(name)));
+  for (let i = 0; i < WARM_UP; i++) generator.next();
   const scores = new Float64Array(count);
   for (let i = 0; i < count; i++) {
     // The middle of the last representable step keeps the score finite at both ends.

@@ -1,16 +1,16 @@
 import { z } from "zod";
+import { domainFaults } from "./domain";
 import { EngineError, type Fault } from "./errors";
 import { LIMITS } from "./limits";
-import type { AssessmentInput, Quantity, TransmissionGiven } from "./types";
+import { inWords } from "./numeric";
+import type { AssessmentInput, TransmissionGiven } from "./types";
 
 /** Range of a number or quantity, with the words of its refusal. */
 type Range = { min?: number; above?: number; max?: number; below?: number; what?: string };
 
-const format = (value: number) => value.toLocaleString("en-GB", { maximumFractionDigits: 10 });
-
 function allowed({ min, above, max, below }: Range): string {
-  const low = min !== undefined ? `at least ${format(min)}` : above !== undefined ? `above ${format(above)}` : "";
-  const high = max !== undefined ? `at most ${format(max)}` : below !== undefined ? `below ${format(below)}` : "";
+  const low = min !== undefined ? `at least ${inWords(min)}` : above !== undefined ? `above ${inWords(above)}` : "";
+  const high = max !== undefined ? `at most ${inWords(max)}` : below !== undefined ? `below ${inWords(below)}` : "";
   return `must be ${[low, high].filter(Boolean).join(" and ")}`;
 }
 const inside = (value: number, { min, above, max, below }: Range) =>
@@ -103,7 +103,7 @@ const assessmentPackage = z.strictObject({
   items: z.array(item, "must be a list").max(200, "must have at most 200 items"),
 });
 
-/** The assessment file's input, as a schema; `parseAssessmentInput` adds what needs more than one field. */
+/** The assessment file's input, as a schema; `domain.ts` adds what needs more than one field. */
 export const AssessmentInputSchema = z.strictObject({
   format: z.literal("ebbmark.assessment-input/1", 'must be "ebbmark.assessment-input/1"'),
   outbreak: z.strictObject({
@@ -130,14 +130,12 @@ export const AssessmentInputSchema = z.strictObject({
     .nullable(),
 });
 
-export const central = (value: Quantity): number => (typeof value === "number" ? value : value.central);
-
 /** @throws EngineError "outsideDomain" with every fault, each naming its field and what is allowed */
 export function parseAssessmentInput(raw: unknown): AssessmentInput {
   const parsed = AssessmentInputSchema.safeParse(raw);
   if (!parsed.success) throw new EngineError("outsideDomain", parsed.error.issues.flatMap((issue) => faultsOf(issue, raw)));
   const input = raw as AssessmentInput;
-  const faults = [...peopleFaults(input), ...measureFaults(input), ...packageFaults(input)];
+  const faults = domainFaults(input);
   if (faults.length > 0) throw new EngineError("outsideDomain", faults);
   return input;
 }
@@ -162,57 +160,3 @@ function faultsOf(issue: z.core.$ZodIssue, raw: unknown): Fault[] {
 
 const pathOf = (keys: readonly PropertyKey[]) =>
   keys.reduce<string>((path, key) => (typeof key === "number" ? `${path}[${key}]` : path ? `${path}.${String(key)}` : String(key)), "");
-
-function peopleFaults({ outbreak }: AssessmentInput): Fault[] {
-  const faults: Fault[] = [];
-  const infectious = central(outbreak.infectious);
-  const removed = central(outbreak.removed ?? 0);
-  const exposed = outbreak.exposed === undefined ? null : central(outbreak.exposed);
-  const { population, latentPeriod } = outbreak;
-  if (latentPeriod === null && (exposed ?? 0) > 0) faults.push({ path: "outbreak.exposed", message: "must be 0 or left out where there is no latent stage (latentPeriod null)" });
-  if (infectious + (exposed ?? 0) < LIMITS.infectedMin) faults.push({ path: "outbreak.infectious", message: "must be above 0 where nobody is latent: without anybody infected there is no outbreak" });
-  if (infectious + removed + (exposed ?? 0) >= population) {
-    faults.push({ path: "outbreak.population", message: "must be above infectious + exposed + removed, so that somebody is susceptible" });
-  }
-  if (outbreak.susceptible !== undefined) {
-    const sum = outbreak.susceptible + infectious + removed + (exposed ?? 0);
-    if (exposed === null && latentPeriod !== null) faults.push({ path: "outbreak.exposed", message: "must be given where susceptible is given: the four must add up to the population" });
-    else if (Math.abs(sum - population) > 1e-9 * population) {
-      faults.push({ path: "outbreak.susceptible", message: `must make susceptible + exposed + infectious + removed equal the population ${format(population)}; they add up to ${format(sum)}` });
-    }
-    for (const [name, value] of [["exposed", outbreak.exposed], ["infectious", outbreak.infectious], ["removed", outbreak.removed]] as const) {
-      if (typeof value === "object") faults.push({ path: `outbreak.${name}`, message: "must be one number where susceptible is given: the four must add up in every draw" });
-    }
-  }
-  return faults;
-}
-
-function measureFaults({ measures }: AssessmentInput): Fault[] {
-  return measures.flatMap(({ id }, index) =>
-    measures.findIndex((other) => other.id === id) < index ? [{ path: `measures[${index}].id`, message: `must be unique; "${id}" is used before` }] : [],
-  );
-}
-
-function packageFaults({ measures, packages }: AssessmentInput): Fault[] {
-  const byId = new Map(measures.map((each) => [each.id, each]));
-  return packages.flatMap((each, index) => {
-    const at = `packages[${index}]`;
-    const faults: Fault[] = [];
-    if (packages.findIndex((other) => other.id === each.id) < index) faults.push({ path: `${at}.id`, message: `must be unique; "${each.id}" is used before` });
-    each.items.forEach((one, i) => {
-      const path = `${at}.items[${i}]`;
-      const known = byId.get(one.measure);
-      if (!known) faults.push({ path: `${path}.measure`, message: `must be the id of a measure in measures; "${one.measure}" is not` });
-      for (let k = 0; k < i; k++) {
-        const other = each.items[k]!;
-        const together = one.startDay < (other.endDay ?? Number.POSITIVE_INFINITY) && other.startDay < (one.endDay ?? Number.POSITIVE_INFINITY);
-        if (!together) continue;
-        if (other.measure === one.measure) faults.push({ path, message: `must not overlap items[${k}] of the same measure` });
-        else if (known?.ladder != null && byId.get(other.measure)?.ladder === known.ladder) {
-          faults.push({ path, message: `must not be in force together with items[${k}]: both are rungs of the ladder "${known.ladder}"` });
-        }
-      }
-    });
-    return faults;
-  });
-}

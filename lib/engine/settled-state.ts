@@ -135,3 +135,7 @@ export function removalsToCome(state: State, population: number, transmissionRat
   const solved = settledState({ excess: infected / s, thresholdRatio: b });
   return { ...solved, value: b * s * solved.value };
 }
+
+/** Susceptible left after so many removals under a constant β: S e^(−u), without a difference of large numbers. Persons. */
+export const susceptibleAfter = (from: State, removals: number, population: number, transmissionRate: number, removalRate: number): number =>
+  from.susceptible * Math.exp((-removals * transmissionRate) / (removalRate * population));

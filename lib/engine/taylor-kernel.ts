@@ -4,22 +4,10 @@
  * @see Jorba & Zou (2005), Experimental Mathematics 14:99, for the choice of step
  */
 import { tooManySteps } from "./errors";
+import type { Parameters } from "./model";
 import { findRoot } from "./numeric";
-import { removalsToCome, type State } from "./settled-state";
+import { removalsToCome, type State, susceptibleAfter } from "./settled-state";
 import { stepWithLatent, stepWithoutLatent, TAYLOR_ORDER } from "./taylor-step.generated";
-
-/** One draw (or the central run) of what drives the outbreak. Persons, per day, share. */
-export type Parameters = {
-  population: number;
-  susceptible: number;
-  exposed: number;
-  infectious: number;
-  removed: number;
-  transmissionRate: number;
-  removalRate: number;
-  onsetRate: number | null;
-  infectionFatality: number;
-};
 
 /** What one run through a schedule leaves behind; reused from run to run. */
 export type Run = {
@@ -27,6 +15,8 @@ export type Run = {
   states: State[];
   /** Removals from day 0 to t → ∞, persons, with the last piece for ever. */
   removals: number;
+  /** Susceptible at t → ∞, persons. */
+  susceptibleLeft: number;
   peakDay: number;
   peakInfectious: number;
   /** Day from which on E + I stays below 1, ten years at most; NaN unless asked for. */
@@ -40,6 +30,7 @@ export type Run = {
 export const newRun = (pieces: number): Run => ({
   states: Array.from({ length: pieces }, () => ({ susceptible: 0, latent: 0, infectious: 0, removed: 0 })),
   removals: 0,
+  susceptibleLeft: 0,
   peakDay: 0,
   peakInfectious: 0,
   dayBelowOne: Number.NaN,
@@ -125,6 +116,7 @@ export function followSchedule(p: Parameters, starts: ArrayLike<number>, factors
   noteState(state, n);
   const solved = removalsToCome(state, n, beta, flow.gamma);
   run.removals = state.removed + solved.value;
+  run.susceptibleLeft = susceptibleAfter(state, solved.value, n, beta, flow.gamma);
   run.converged = solved.outcome === "converged";
   run.residual = solved.residual;
   if (wants.belowOne) day = followUntilBelowOne(flow, run, beta, day);

@@ -9,10 +9,10 @@
  * @see Hairer, Nørsett & Wanner (1993), Solving Ordinary Differential Equations I, II.9
  */
 import { EngineError, tooManySteps } from "./errors";
+import type { Parameters } from "./model";
 import { findRoot } from "./numeric";
 import { Outcome, Solver } from "./odex-solver.mjs";
-import { removalsToCome, type State } from "./settled-state";
-import type { Parameters } from "./taylor-kernel";
+import { removalsToCome, type State, susceptibleAfter } from "./settled-state";
 import type { CoursePoint } from "./types";
 
 export type Trajectory = {
@@ -119,8 +119,7 @@ export function trajectory(p: Parameters, starts: readonly number[], factors: re
   const final = states[last]!;
   const solved = removalsToCome(final, n, beta, gamma);
   if (solved.outcome !== "converged") throw new EngineError("notConverged");
-  // S∞ = S e^(−u*), with u* = removals to come × β/(γN): no difference of large numbers.
-  const susceptibleLeft = final.susceptible * Math.exp((-solved.value * beta) / (gamma * n));
+  const susceptibleLeft = susceptibleAfter(final, solved.value, n, beta, gamma);
 
   // Past the last switch only for the drawing and the peak: where it settles is already known.
   const falls = () => !grows() && slope(y[X]!, y[THETA]!) <= 0;

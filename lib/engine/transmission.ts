@@ -1,4 +1,5 @@
 import { outsideDomain } from "./errors";
+import { inWords } from "./numeric";
 import type { TransmissionGiven } from "./types";
 
 /** γ and σ, per day; σ is null where there is no latent stage. */
@@ -31,44 +32,55 @@ export const doublingTimeOfGrowth = (growthRate: number): number => Math.LN2 / g
 export type DayZero = { population: number; infectious: number; removed: number };
 export type StartState = { transmissionRate: number; susceptible: number; exposed: number };
 
+/** The growth-consistent number latent, persons: I(r + γ)/σ with r the growth rate at R = β(N − Z − I)/(γN); 0 where r ≤ −γ. */
+export function consistentExposed(transmissionRate: number, { removalRate, onsetRate }: { removalRate: number; onsetRate: number }, day: DayZero): number {
+  const reproductionNumber = (transmissionRate * (day.population - day.removed - day.infectious)) / (removalRate * day.population);
+  const growth = growthRateAt(reproductionNumber, { removalRate, onsetRate });
+  return growth <= -removalRate ? 0 : (day.infectious * (growth + removalRate)) / onsetRate;
+}
+
 const FIXED_POINT_STEPS = 60;
 
 /**
  * β, and who is latent and susceptible on day 0, from transmission given in one of the five ways.
  * The last three ways are measured on day 0 with that day's susceptibles, who depend on how many are latent; those
- * depend on growth, hence the (strongly contracting) iteration.
- * @param exposed persons, or null for the growth-consistent number I(r + γ)/σ
- * @throws EngineError where the growth rate is ≤ −min(σ, γ) or nobody is left susceptible
+ * depend on growth, hence the iteration, which contracts strongly where few are infectious.
+ * @param exposed persons, or null for the growth-consistent number
+ * @throws EngineError "outsideDomain" where the growth rate is ≤ −min(σ, γ), nobody is left susceptible, or so many are
+ * infectious that no number latent is consistent
  */
 export function startState(given: TransmissionGiven, value: number, rates: Rates, day: DayZero, exposed: number | null): StartState {
   const { removalRate, onsetRate } = rates;
   const rest = day.population - day.removed - day.infectious;
   const measured = measuredReproductionNumber(given, value, rates);
-  let latent = exposed ?? 0;
-  let transmissionRate = 0;
-  for (let step = 0; step < FIXED_POINT_STEPS; step++) {
-    const susceptible = rest - latent;
+  const rateWith = (susceptible: number): number => {
     if (!(susceptible > 0)) throw outsideDomain("outbreak.susceptible", `must be above 0 and at most the population; ${Math.max(0, rest)} are left before those latent`);
-    transmissionRate =
-      given === "rate" ? value : given === "reproductionNumber" ? value * removalRate : (measured * removalRate * day.population) / susceptible;
-    if (exposed !== null || onsetRate === null) break;
-    const growth = growthRateAt((transmissionRate * rest) / (removalRate * day.population), rates);
-    const next = growth <= -removalRate ? 0 : (day.infectious * (growth + removalRate)) / onsetRate;
+    if (given === "rate") return value;
+    return given === "reproductionNumber" ? value * removalRate : (measured * removalRate * day.population) / susceptible;
+  };
+  if (exposed !== null || onsetRate === null) {
+    const latent = exposed ?? 0;
+    return { transmissionRate: rateWith(rest - latent), susceptible: rest - latent, exposed: latent };
+  }
+  let latent = 0;
+  for (let step = 0; step < FIXED_POINT_STEPS; step++) {
+    const next = consistentExposed(rateWith(rest - latent), { removalRate, onsetRate }, day);
     const settled = Math.abs(next - latent) <= 4 * Number.EPSILON * next;
     latent = next;
-    if (settled) break;
+    if (settled) return { transmissionRate: rateWith(rest - latent), susceptible: rest - latent, exposed: latent };
   }
-  return { transmissionRate, susceptible: rest - latent, exposed: latent };
+  throw outsideDomain("outbreak.exposed", "must be given: with so many infectious no number latent goes with this growth");
 }
+
+/** Growth rates at or below this have no reproduction number: −min(σ, γ), per day. */
+export const growthRateLimit = ({ removalRate, onsetRate }: Rates): number => -Math.min(removalRate, onsetRate ?? Number.POSITIVE_INFINITY);
 
 function measuredReproductionNumber(given: TransmissionGiven, value: number, rates: Rates): number {
   if (given === "effectiveReproductionNumber") return value;
   if (given !== "growthRate" && given !== "doublingTime") return Number.NaN;
   const growth = given === "growthRate" ? value : growthRateOfDoubling(value);
-  const limit = -Math.min(rates.removalRate, rates.onsetRate ?? Number.POSITIVE_INFINITY);
-  if (!(growth > limit)) {
-    throw outsideDomain("outbreak.transmission.value", `growth rate must be above ${limit} per day, minus the smaller of removal and onset rate`);
-  }
+  const limit = growthRateLimit(rates);
+  if (!(growth > limit)) throw outsideDomain("outbreak.transmission.value", `must be above ${inWords(limit)} per day, minus the smaller of removal and onset rate`);
   return reproductionNumberAtGrowth(growth, rates);
 }
 

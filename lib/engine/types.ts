@@ -122,19 +122,42 @@ export type CostResult = {
   perDeathAverted: number | null;
 };
 
+/** One phase over the draws. */
+export type PhaseUncertainty = {
+  effectiveRatioAtStart: Interval;
+  effectiveRatioAtEnd: Interval;
+  /** E + I, persons. */
+  infectedAtEnd: Interval;
+  /** Share of the draws with an effective ratio of 1 or more at its start. */
+  chanceShrinksAtStart: number;
+  /** Mean over the draws; null where nothing is lifted at its end. */
+  chanceEndsByItself: number | null;
+};
+
 export type PackageUncertainty = {
   thresholdRatio: Interval;
+  /** b' − b, paired. */
+  thresholdShift?: Interval;
   finalDeaths: { asScheduled: Interval; heldToEnd: Interval; heldFromDayZero: Interval };
+  /** Quantiles of paired differences. */
   deathsAverted: { asScheduled: Interval; heldToEnd: Interval };
   /** All infected since day 0, persons, as scheduled. */
   finalInfected: Interval;
   cost: { total: Interval; byPayer: Record<Payer, Interval> };
   /** Day of the highest I, as scheduled. */
   peakDay: Interval;
+  peakInfectious?: Interval;
+  /** Deaths on the day on which they are highest. */
+  worstDayDeaths?: Interval;
+  /** null where never lifted. */
+  susceptibleShareAtLift?: Interval | null;
+  /** null where every item has an end. */
+  chargedUntilDay?: Interval | null;
+  /** null where some draws avert no deaths: the ratio has no interval then. */
   perDeathAverted: Interval | null;
   chanceEnough: number;
-  phases: { chanceShrinksAtStart: number; chanceEndsByItself: number | null }[];
-  /** Standard error of each median and chance, by dotted path. */
+  phases: PhaseUncertainty[];
+  /** Standard error by dotted path: of a median and a chance under its own path, of an interval's ends under `.low` and `.high`. */
   monteCarloError: Record<string, number>;
 };
 
@@ -190,6 +213,8 @@ export type WithoutMeasuresResult = {
     finalDeaths: Interval;
     finalInfected: Interval;
     peakDay: Interval;
+    peakInfectious?: Interval;
+    worstDayDeaths?: Interval;
     chanceShrinks: number;
     monteCarloError: Record<string, number>;
   } | null;
@@ -201,7 +226,7 @@ export type Comparison = {
   dominated: { id: string; by: string[]; kind: "simple" | "extended" }[];
   incremental: { from: string; to: string; cost: number; deathsAverted: number; ratio: number | null }[];
   /** Share of paired draws in which `a` averts more deaths as scheduled than `b`; empty without draws. */
-  pairs: { a: string; b: string; chanceAvertsMore: number }[];
+  pairs: { a: string; b: string; chanceAvertsMore: number; monteCarloError?: number }[];
 };
 
 /** Whether the calculation may be frozen, and the evidence for it. */

@@ -25,6 +25,12 @@ export function piecesOf(items: readonly Pick<PackageInput["items"][number], "st
   return pieces;
 }
 
+/** Whether something in force in piece k is lifted at its end. */
+export function isLift(pieces: readonly Piece[], k: number): boolean {
+  const next = pieces[k + 1];
+  return next !== undefined && pieces[k]!.items.some((item) => !next.items.includes(item));
+}
+
 /** Index of the piece with the smallest factor, the earliest on a tie. */
 export function strongestOf(factors: ArrayLike<number>): number {
   let best = 0;

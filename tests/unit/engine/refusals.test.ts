@@ -66,7 +66,7 @@ describe("outside the domain the engine names the field and what is allowed", ()
 
   test("a growth rate that would end faster than people recover", () => {
     const copy = changed("outbreak.transmission", { given: "growthRate", value: -0.5 });
-    expect(() => assess({ ...copy, uncertainty: null })).toThrow(/outbreak\.transmission\.value: growth rate must be above -0\.16/);
+    expect(() => assess({ ...copy, uncertainty: null })).toThrow(/outbreak\.transmission\.value: must be above -0\.1666666667 per day/);
   });
 });
 
