@@ -15,9 +15,9 @@ import { Warnings } from "./warnings";
 export function AssessmentResultView({ view, horizonDays }: { view: AssessmentView; horizonDays: number }) {
   const shown = useShown(view.outbreak);
   // Beside each other where both fit; more than three packages need the whole width.
-  const beside = view.result.packages.length <= 3 ? "min-[1380px]:grid-cols-[minmax(0,1fr)_516px] print:grid-cols-[minmax(0,1fr)_516px]" : "";
+  const beside = view.result.packages.length <= 3 ? "min-[1380px]:grid-cols-[minmax(0,1fr)_516px]" : "";
   return (
-    <div className="grid gap-10">
+    <div className="grid grid-cols-[minmax(0,1fr)] gap-10">
       <div className={`grid grid-cols-[minmax(0,1fr)] items-start gap-x-7 gap-y-10 ${beside}`}>
         <div className="grid min-w-0 gap-6">
           <ComparisonTable view={view} />

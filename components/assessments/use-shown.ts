@@ -1,6 +1,6 @@
 import { useLocale, useTranslations } from "next-intl";
 import type { Range } from "@/lib/charts/axes";
-import { dateOf } from "@/lib/assessments/days";
+import { dateOf } from "@/lib/packages/days";
 import { formatMoney, formatPercent, formatPersons, formatRatio, formatShortDay, type MoneyUnit } from "@/lib/figures/format";
 import { isFew } from "@/lib/figures/round";
 import { type Locale, numberLocale } from "@/lib/i18n/locales";
@@ -34,9 +34,11 @@ export function useShown(outbreak: { dayZero: string; currency: string }) {
       // Costs without a spread have an interval of no width: it would only look like knowledge.
       return { value: write(range.mid), interval: range.low === range.high ? null : interval(range, write) };
     },
-    /** An amount in running text. */
-    amount: (value: number) =>
-      new Intl.NumberFormat(tag, { style: "currency", currency: outbreak.currency, notation: "compact", compactDisplay: "long", maximumSignificantDigits: 3 }).format(value),
+    /** An amount in running text: "€30.5 million", the currency where the language puts it. */
+    amount: (value: number) => {
+      const words = new Intl.NumberFormat(tag, { notation: "compact", compactDisplay: "long", maximumSignificantDigits: 3 }).format(value);
+      return new Intl.NumberFormat(tag, { style: "currency", currency: outbreak.currency, maximumFractionDigits: 0 }).format(1).replace("1", words.replaceAll(" ", "\u00a0"));
+    },
   };
 }
 export type Shown = ReturnType<typeof useShown>;

@@ -18,7 +18,7 @@ export function Drawing({ model, id, className, numberLocale, desc }: { model: S
   const t = useTranslations("Charts");
   const { width, height, left, right, top, bottom, line } = model;
   const count = new Intl.NumberFormat(numberLocale, { maximumFractionDigits: 0 });
-  const ratio = new Intl.NumberFormat(numberLocale, { minimumFractionDigits: 1, maximumSignificantDigits: 3 });
+  const ratio = new Intl.NumberFormat(numberLocale, { minimumFractionDigits: 1, maximumFractionDigits: 2 });
   return (
     <svg viewBox={`0 0 ${width} ${height}`} width={width} height={height} role="img" aria-labelledby={`${id}-t ${id}-d`} className={className}>
       <title id={`${id}-t`}>{t("settling.title")}</title>

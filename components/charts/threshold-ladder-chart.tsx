@@ -29,7 +29,7 @@ export function Panel({ panel, id, className, numberLocale }: { panel: LadderPan
   const { width, height, left, right, top, bottom, line, none } = panel;
   const ratio = (value: number) => formatRatio(value, numberLocale);
   const ends = ({ low, high }: Range) => (low === null || high === null ? null : t("interval", { low: ratio(low), high: ratio(high) }));
-  const axis = (value: number) => new Intl.NumberFormat(numberLocale, { minimumFractionDigits: 1, maximumSignificantDigits: 3 }).format(value);
+  const axis = (value: number) => new Intl.NumberFormat(numberLocale, { minimumFractionDigits: 1, maximumFractionDigits: 2 }).format(value);
   return (
     <svg viewBox={`0 0 ${width} ${height}`} width={width} height={height} role="img" aria-labelledby={`${id}-t ${id}-d`} className={className}>
       <title id={`${id}-t`}>{t("ladder.title")}</title>
@@ -125,11 +125,13 @@ function Column({ column, bottom, value, interval, chance }: { column: LadderCol
       ) : null}
       <ValueLabel x={label.x} y={label.y} value={value} interval={interval} />
       <Tile letter={letter} x={footX + 8} y={bottom + 16} />
-      <text x={footX + 22} y={bottom + 20} className="lbl b">
-        {column.name}
-      </text>
+      {column.name.map((words, row) => (
+        <text key={row} x={footX + 22} y={bottom + 20 + row * 15} className="lbl b">
+          {words}
+        </text>
+      ))}
       {chance ? (
-        <text x={footX} y={bottom + 38} className="iv-t">
+        <text x={footX + 22} y={bottom + 22 + column.name.length * 15} className="iv-t">
           {chance}
         </text>
       ) : null}

@@ -10,6 +10,19 @@ export function fitText(text: string, fontPx: number, widthPx: number): string {
   return `${chars.join("").trimEnd()}…`;
 }
 
+/** A text in lines of a width, broken between words; the last line is cut where more is left. */
+export function wrapText(text: string, fontPx: number, widthPx: number, linesMax: number): string[] {
+  const lines: string[] = [];
+  let rest = text.split(" ");
+  while (rest.length > 0 && lines.length < linesMax - 1) {
+    let taken = 1;
+    while (taken < rest.length && textWidth(rest.slice(0, taken + 1).join(" "), fontPx) <= widthPx) taken++;
+    lines.push(fitText(rest.slice(0, taken).join(" "), fontPx, widthPx));
+    rest = rest.slice(taken);
+  }
+  return rest.length > 0 ? [...lines, fitText(rest.join(" "), fontPx, widthPx)] : lines;
+}
+
 /**
  * Moves positions apart until neighbours are `gapPx` away from each other, each as near to its wish as that allows
  * (isotonic regression), inside the bounds where they fit at all. Order is kept.

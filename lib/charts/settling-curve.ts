@@ -113,7 +113,9 @@ function labelsOf(input: SettlingInput, none: Cross, marks: SettlingModel["marks
     ...heavy,
     ...all.flatMap(arms),
     ...curve.map(([cx, cy]) => ({ x: cx - 3, y: cy - 3, width: 6, height: 6 })),
-    { x: line - 3, y: 0, width: 6, height: bounds.height + 4 },
+    // The way between the two marks of a package.
+    ...marks.map(({ held, scheduled }) => ({ x: scheduled.x - 2, y: Math.min(held.y, scheduled.y), width: 4, height: Math.abs(held.y - scheduled.y) })),
+    { x: line - 6, y: 0, width: 12, height: bounds.height + 4 },
     { x: line - 44, y: 4, width: 100, height: 20 },
   ];
   return placeLabels(wanted, obstacles, bounds).map(({ box, leader }, index) => {

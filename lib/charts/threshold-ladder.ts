@@ -1,5 +1,5 @@
 import { highest, logScale, logTicks, px, type Range, ratioDomain, type Tick, waterlines } from "./axes";
-import { fitText, spread } from "./labels";
+import { fitText, spread, wrapText } from "./labels";
 
 export type LadderRung = {
   key: string;
@@ -16,7 +16,8 @@ export type LadderSize = { widthPx: number; heightPx: number; /** Columns per pa
 export type Whisker = { x: number; low: number; high: number; mid: number } | null;
 export type LadderColumn = {
   letter: string;
-  name: string;
+  /** In one or two lines. */
+  name: string[];
   value: Range;
   chanceEnough: number | null;
   rails: { x1: number; x2: number; from: number; to: number };
@@ -43,13 +44,13 @@ export type LadderPanel = {
   columns: LadderColumn[];
 };
 
-export const LADDER_WIDE: LadderSize = { widthPx: 516, heightPx: 560, perPanel: 3, noneWidthPx: 84 };
-export const LADDER_NARROW: LadderSize = { widthPx: 320, heightPx: 470, perPanel: 2, noneWidthPx: 36 };
+export const LADDER_WIDE: LadderSize = { widthPx: 516, heightPx: 576, perPanel: 3, noneWidthPx: 84 };
+export const LADDER_NARROW: LadderSize = { widthPx: 320, heightPx: 486, perPanel: 2, noneWidthPx: 36 };
 
 const LEFT = 34;
 const RIGHT = 34;
 const TOP = 58;
-const FOOT = 48;
+const FOOT = 66;
 const NAME_GAP = 14;
 
 /**
@@ -61,7 +62,7 @@ export function thresholdLadder({ none, packages }: LadderInput, size: LadderSiz
   const bottom = size.heightPx - FOOT;
   const scale = logScale(domain, [bottom, TOP]);
   const right = size.widthPx - RIGHT;
-  const mirror = logTicks([1 / domain[1], 1 / domain[0]], (r) => scale(1 / r), 18);
+  const mirror = logTicks([1 / domain[1], 1 / domain[0]], (r) => scale(1 / r), 22);
   const groups = packages.length === 0 ? [[]] : chunks(packages, size.perPanel);
   return groups.map((group) => {
     const columnPx = (right - LEFT - size.noneWidthPx) / size.perPanel;
@@ -76,7 +77,7 @@ export function thresholdLadder({ none, packages }: LadderInput, size: LadderSiz
       top: TOP - 18,
       bottom,
       line,
-      ticks: logTicks(domain, scale, 18).map(rounded),
+      ticks: logTicks(domain, scale, 20).map(rounded),
       mirrored: mirror.map(rounded),
       water: waterlines(bottom - line).map(({ offset, opacity }) => ({ y: px(line + offset), opacity })),
       none: {
@@ -114,7 +115,7 @@ function column(each: LadderPackage, start: number, width: number, from: number,
   const labels = spread(steps.map(({ middle }) => middle), NAME_GAP, [24, bottom - 6]);
   return {
     letter: each.letter,
-    name: fitText(each.name, 13, width - 28),
+    name: wrapText(each.name, 13.5, width - 30, 2),
     value: each.ratio,
     chanceEnough: each.chanceEnough,
     rails: { x1: px(x1), x2: px(x2), from: px(scale(from)), to: px(scale(each.ratio.mid)) },

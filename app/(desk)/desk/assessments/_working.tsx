@@ -82,7 +82,7 @@ function Editor({ id, outbreak, saved, defaults, packages, freeze }: WorkingProp
           ) : null}
         </div>
       </details>
-      <div className="sticky top-0 z-[3] mt-3 flex min-h-[48px] flex-wrap items-center gap-x-4 gap-y-1 border-b border-hair bg-paper py-1 print:hidden">
+      <div className={`top-0 z-[3] mt-2 flex min-h-[44px] flex-wrap items-center gap-x-4 gap-y-1 bg-paper py-1 print:hidden ${live.edited ? "sticky" : ""}`}>
         <p role="status" aria-live="polite" className={`sm ${outcome && outcome.kind !== "view" ? "font-semibold text-clay" : "mut"}`}>
           {scripted ? status : null}
         </p>
@@ -97,7 +97,7 @@ function Editor({ id, outbreak, saved, defaults, packages, freeze }: WorkingProp
           </Button>
         ) : null}
       </div>
-      <div aria-busy={live.working} className={`mt-4 ${stale ? "opacity-60" : ""}`}>
+      <div aria-busy={live.working} className={`mt-1 ${stale ? "opacity-60" : ""}`}>
         {shown ? <AssessmentResultView view={shown.view} horizonDays={shown.horizonDays} /> : null}
       </div>
       <section className="sec print:hidden" id="freeze-section" aria-labelledby="freeze-title">

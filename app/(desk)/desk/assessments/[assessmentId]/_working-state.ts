@@ -1,6 +1,6 @@
 import type { getTranslations } from "next-intl/server";
 import { currentResult } from "@/lib/assessments/current-result";
-import { dateOf } from "@/lib/assessments/days";
+import { dateOf } from "@/lib/packages/days";
 import { type ReasonAgainstFreezing, reasonsAgainstFreezing } from "@/lib/assessments/freeze-rules";
 import type { getAssessment } from "@/lib/assessments/queries";
 import { placeOf } from "@/lib/assessments/recalculation";
