@@ -18,3 +18,4 @@ export {
 } from "./transmission";
 export type * from "./types";
 export { ENGINE_VERSION } from "./version";
+export { type Piece, piecesOf } from "./windows";

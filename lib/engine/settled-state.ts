@@ -118,6 +118,9 @@ export const stabilitySlope = (thresholdRatio: number, u: number): number => Mat
 /** Persons; with fewer than this left susceptible, ratios that divide by them say nothing any more. */
 export const SUSCEPTIBLE_LEAST = 1e-9;
 
+/** Persons; fewer infected than this at a switch are nobody, so that no outbreak comes back from rounding. */
+export const INFECTED_LEAST = 1e-30;
+
 /** A state of the outbreak at one moment, persons; `removed` counts from day 0. */
 export type State = { susceptible: number; latent: number; infectious: number; removed: number };
 
@@ -128,7 +131,7 @@ export type State = { susceptible: number; latent: number; infectious: number; r
 export function removalsToCome(state: State, population: number, transmissionRate: number, removalRate: number): Solved {
   const s = state.susceptible;
   const infected = state.latent + state.infectious;
-  if (infected === 0) return { value: 0, iterations: 0, residual: 0, outcome: "converged" };
+  if (infected < INFECTED_LEAST) return { value: 0, iterations: 0, residual: 0, outcome: "converged" };
   // Nobody is left to be infected: whoever is infected now is all that is to come.
   if (s < SUSCEPTIBLE_LEAST) return { value: infected, iterations: 0, residual: 0, outcome: "converged" };
   const b = (removalRate * population) / (transmissionRate * s);

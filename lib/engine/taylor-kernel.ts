@@ -6,7 +6,7 @@
 import { tooManySteps } from "./errors";
 import type { Parameters } from "./model";
 import { findRoot } from "./numeric";
-import { removalsToCome, type State, susceptibleAfter } from "./settled-state";
+import { INFECTED_LEAST, removalsToCome, type State, susceptibleAfter } from "./settled-state";
 import { stepWithLatent, stepWithoutLatent, TAYLOR_ORDER } from "./taylor-step.generated";
 
 /** What one run through a schedule leaves behind; reused from run to run. */
@@ -126,6 +126,7 @@ export function followSchedule(p: Parameters, starts: ArrayLike<number>, factors
 }
 
 function noteState(state: State, population: number): void {
+  if ((y[E]! + y[I]!) * population < INFECTED_LEAST) y.fill(0, E, Z);
   state.susceptible = y[S]! * population;
   state.latent = y[E]! * population;
   state.infectious = y[I]! * population;
