@@ -1,5 +1,5 @@
 import { DomainError } from "@/lib/errors";
-import { dayOf } from "./days";
+import { dayOf } from "@/lib/packages/days";
 import type { EditAssessmentInput, EditedItem } from "./schema";
 import type { SourcePackage, Sources } from "./to-input";
 

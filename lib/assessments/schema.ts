@@ -1,5 +1,5 @@
 import { z } from "zod";
-import { dayOf } from "./days";
+import { dayOf } from "@/lib/packages/days";
 import {
   DRAWS_MAX, DRAWS_MIN, HORIZON_DAYS_MAX, HORIZON_DAYS_MIN, PACKAGE_LETTERS, PACKAGES_MAX, REASON_MAX, REASON_MIN,
   SCHEDULE_DAYS_MAX, SEED_MAX, SHIFT_DAYS_MAX, TITLE_MAX,

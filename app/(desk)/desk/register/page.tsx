@@ -25,8 +25,8 @@ export default async function RegisterPage({ searchParams }: { searchParams: Sea
   // The run between the oldest and newest shown, whatever the filter hides in between.
   const run = oldest === undefined || newest === undefined ? [] : await readChain(Math.max(1, oldest - 1), newest);
   const fault = firstFault(run, run[0]?.seq === 1 ? GENESIS : null);
-  const query = (extra: Record<string, string | number>) =>
-    `/desk/register?${new URLSearchParams(Object.entries({ ...(filter.action ? { action: filter.action } : {}), ...(filter.subject ? { subject: filter.subject } : {}), ...extra }).map(([k, v]) => [k, String(v)]))}`;
+  const query = (extra: { before?: string }) =>
+    `/desk/register?${new URLSearchParams(Object.entries({ ...(filter.action ? { action: filter.action } : {}), ...(filter.subject ? { subject: filter.subject } : {}), ...extra })))}`;
   return (
     <main id="main" className="wrap">
       <PageHead title={t("title")} lede={t("lede")} />
@@ -87,7 +87,7 @@ export default async function RegisterPage({ searchParams }: { searchParams: Sea
       )}
       <div className="mt-4 flex gap-6">
         {filter.before ? <Link href={query({})}>{t("newest")}</Link> : null}
-        {entries.length === PAGE_ROWS && oldest ? <Link href={query({ before: oldest })}>{t("older")}</Link> : null}
+        {entries.length === PAGE_ROWS && oldest ? <Link href={query({ before: String(oldest) })}>{t("older")}</Link> : null}
       </div>
     </main>
   );

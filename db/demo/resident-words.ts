@@ -1,0 +1,88 @@
+import type { Locale } from "../../lib/i18n/locales";
+
+type Words = Record<Locale, { title: string; detail: string }>;
+
+/** What residents must do, measure by measure, in every language of the invented district. */
+export const RESIDENT_WORDS: Record<string, Words> = {
+  sick: {
+    en: { title: "If you are ill, stay at home", detail: "Your pay continues from the first day." },
+    es: { title: "Si está enfermo, quédese en casa", detail: "Su sueldo continúa desde el primer día." },
+    fr: { title: "Si vous êtes malade, restez chez vous", detail: "Votre salaire est maintenu dès le premier jour." },
+    uk: { title: "Якщо ви захворіли, залишайтеся вдома", detail: "Зарплата зберігається з першого дня." },
+    vi: { title: "Nếu bị bệnh, hãy ở nhà", detail: "Bạn vẫn được trả lương từ ngày đầu tiên." },
+    hi: { title: "बीमार हों तो घर पर रहें", detail: "पहले दिन से आपका वेतन जारी रहता है।" },
+    ar: { title: "إذا مرضتَ فابقَ في البيت", detail: "يستمر أجرك من اليوم الأول." },
+  },
+  mask: {
+    en: { title: "Wear a mask in transport, shops and care", detail: "Over nose and mouth." },
+    es: { title: "Use mascarilla en el transporte, las tiendas y los centros de atención", detail: "Sobre la nariz y la boca." },
+    fr: { title: "Portez un masque dans les transports, les magasins et les lieux de soins", detail: "Sur le nez et la bouche." },
+    uk: { title: "Носіть маску в транспорті, крамницях і закладах догляду", detail: "На носі й роті." },
+    vi: { title: "Đeo khẩu trang trên phương tiện, trong cửa hàng và nơi chăm sóc", detail: "Che cả mũi và miệng." },
+    hi: { title: "परिवहन, दुकानों और देखभाल केंद्रों में मास्क पहनें", detail: "नाक और मुँह दोनों ढकें।" },
+    ar: { title: "البس الكمامة في المواصلات والمتاجر وأماكن الرعاية", detail: "على الأنف والفم." },
+  },
+  air: {
+    en: { title: "Keep the air fresh", detail: "Open windows in halls and classrooms." },
+    es: { title: "Mantenga el aire fresco", detail: "Abra las ventanas en salas y aulas." },
+    fr: { title: "Renouvelez l’air", detail: "Ouvrez les fenêtres des salles et des classes." },
+    uk: { title: "Дбайте про свіже повітря", detail: "Відчиняйте вікна в залах і класах." },
+    vi: { title: "Giữ không khí trong lành", detail: "Mở cửa sổ ở hội trường và lớp học." },
+    hi: { title: "हवा ताज़ी रखें", detail: "हॉल और कक्षाओं में खिड़कियाँ खोलें।" },
+    ar: { title: "جدِّد الهواء", detail: "افتح النوافذ في القاعات والصفوف." },
+  },
+  g100: {
+    en: { title: "Meet in groups of 100 at most", detail: "Indoors and outdoors." },
+    es: { title: "Reúnanse 100 personas como máximo", detail: "En interiores y al aire libre." },
+    fr: { title: "Réunissez-vous à 100 personnes au plus", detail: "À l’intérieur et à l’extérieur." },
+    uk: { title: "Збирайтеся не більше ніж по 100 осіб", detail: "У приміщеннях і надворі." },
+    vi: { title: "Tụ họp tối đa 100 người", detail: "Trong nhà và ngoài trời." },
+    hi: { title: "अधिकतम 100 लोग एक साथ मिलें", detail: "भीतर और बाहर दोनों जगह।" },
+    ar: { title: "لا تجتمعوا في أكثر من 100 شخص", detail: "في الداخل وفي الهواء الطلق." },
+  },
+  g30: {
+    en: { title: "Meet in groups of 30 at most", detail: "Indoors and outdoors." },
+    es: { title: "Reúnanse 30 personas como máximo", detail: "En interiores y al aire libre." },
+    fr: { title: "Réunissez-vous à 30 personnes au plus", detail: "À l’intérieur et à l’extérieur." },
+    uk: { title: "Збирайтеся не більше ніж по 30 осіб", detail: "У приміщеннях і надворі." },
+    vi: { title: "Tụ họp tối đa 30 người", detail: "Trong nhà và ngoài trời." },
+    hi: { title: "अधिकतम 30 लोग एक साथ मिलें", detail: "भीतर और बाहर दोनों जगह।" },
+    ar: { title: "لا تجتمعوا في أكثر من 30 شخصًا", detail: "في الداخل وفي الهواء الطلق." },
+  },
+  g10: {
+    en: { title: "Meet in groups of 10 at most", detail: "Private meetings too." },
+    es: { title: "Reúnanse 10 personas como máximo", detail: "También en reuniones privadas." },
+    fr: { title: "Réunissez-vous à 10 personnes au plus", detail: "Aussi en privé." },
+    uk: { title: "Збирайтеся не більше ніж по 10 осіб", detail: "Також на приватних зустрічах." },
+    vi: { title: "Tụ họp tối đa 10 người", detail: "Kể cả các buổi gặp riêng." },
+    hi: { title: "अधिकतम 10 लोग एक साथ मिलें", detail: "निजी मुलाक़ातों में भी।" },
+    ar: { title: "لا تجتمعوا في أكثر من 10 أشخاص", detail: "يشمل ذلك اللقاءات الخاصة." },
+  },
+  eve: {
+    en: { title: "Leave indoor venues by 20:00", detail: "Take-away goes on." },
+    es: { title: "Salga de los locales cerrados antes de las 20:00", detail: "La comida para llevar continúa." },
+    fr: { title: "Quittez les lieux clos avant 20:00", detail: "La vente à emporter continue." },
+    uk: { title: "Залишайте закриті заклади до 20:00", detail: "Продаж на винос триває." },
+    vi: { title: "Rời các địa điểm trong nhà trước 20:00", detail: "Bán mang đi vẫn tiếp tục." },
+    hi: { title: "20:00 बजे तक बंद जगहों से निकल जाएँ", detail: "घर ले जाने की बिक्री जारी रहती है।" },
+    ar: { title: "غادر الأماكن الداخلية قبل الساعة 20:00", detail: "تستمر خدمة الطلبات الخارجية." },
+  },
+  wfh: {
+    en: { title: "Work from home where your job allows", detail: "Your employer decides which jobs." },
+    es: { title: "Trabaje desde casa si su puesto lo permite", detail: "Su empresa decide qué puestos." },
+    fr: { title: "Travaillez chez vous si votre poste le permet", detail: "Votre employeur décide des postes." },
+    uk: { title: "Працюйте з дому, якщо робота це дозволяє", detail: "Які саме роботи, вирішує роботодавець." },
+    vi: { title: "Làm việc tại nhà nếu công việc cho phép", detail: "Nơi làm việc quyết định công việc nào." },
+    hi: { title: "काम संभव हो तो घर से करें", detail: "कौन-से काम, यह नियोक्ता तय करता है।" },
+    ar: { title: "اعمل من البيت إذا سمح عملك بذلك", detail: "يحدد صاحب العمل الوظائف المعنية." },
+  },
+  sch: {
+    en: { title: "Schools: classes attend in alternate weeks", detail: "The school tells you which week is yours." },
+    es: { title: "Escuelas: las clases asisten en semanas alternas", detail: "La escuela le dirá qué semana le toca." },
+    fr: { title: "Écoles : les classes viennent une semaine sur deux", detail: "L’école vous indique votre semaine." },
+    uk: { title: "Школи: класи навчаються через тиждень", detail: "Школа повідомить, який тиждень ваш." },
+    vi: { title: "Trường học: các lớp đến trường cách tuần", detail: "Nhà trường báo tuần nào là của bạn." },
+    hi: { title: "विद्यालय: कक्षाएँ एक सप्ताह छोड़कर लगेंगी", detail: "आपका सप्ताह विद्यालय बताएगा।" },
+    ar: { title: "المدارس: تحضر الصفوف أسبوعًا بعد أسبوع", detail: "تخبرك المدرسة بأسبوعك." },
+  },
+};
