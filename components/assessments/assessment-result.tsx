@@ -54,7 +54,7 @@ function Ladder({ view, shown }: { view: AssessmentView; shown: Shown }) {
   const rows = view.result.packages.map((each) => {
     const { thresholdRatio: ratio, chanceEnough } = packageFigures(each);
     const rungs = each.contributions.filter(({ logShare }) => logShare !== null).map(({ measure, logShare }) => t("ladder.rung", { name: short.get(measure) ?? measure, percent: Math.round((logShare ?? 0) * 100) }));
-    return [<NamedPackage key="p" letter={each.id} name={nameOf(view, each.id)} />, shown.ratio(ratio.mid), shown.ratioOf(ratio).interval, shown.ratio(1 / ratio.mid), chanceEnough === null ? "–" : shown.percent(chanceEnough), <span key="r" className="whitespace-normal">{rungs.join(", ")}</span>];
+    return [<NamedPackage key="p" letter={each.id} name={nameOf(view, each.id)} />, shown.ratio(ratio.mid), shown.ratioOf(ratio).interval, shown.ratio(1 / ratio.mid), chanceEnough === null ? "–" : shown.percent(chanceEnough), <span key="r" className="block min-w-[260px] whitespace-normal">{rungs.join(", ")}</span>];
   });
   return (
     <ThresholdLadderChart

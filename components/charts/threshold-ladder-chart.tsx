@@ -131,7 +131,7 @@ function Column({ column, bottom, value, interval, chance }: { column: LadderCol
         </text>
       ))}
       {chance ? (
-        <text x={footX + 22} y={bottom + 22 + column.name.length * 15} className="iv-t">
+        <text x={footX} y={bottom + 23 + column.name.length * 15} className="iv-t">
           {chance}
         </text>
       ) : null}

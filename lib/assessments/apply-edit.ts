@@ -5,12 +5,15 @@ import type { SourcePackage, Sources } from "./to-input";
 
 type Item = SourcePackage["items"][number];
 
+/** Per cent to share, without the digits that dividing a decimal leaves behind. */
+const share = (percent: number) => Number((percent / 100).toPrecision(15));
+
 /** Lines as edited on the lines as saved. A line that was saved meanwhile by somebody else makes it a conflict. */
 function editedItem(saved: Item | undefined, edited: EditedItem, dayZero: string, shiftDays: number): Item {
   if (!saved || saved.measureId !== edited.measureId || edited.from === undefined) throw new DomainError("conflict");
   return {
     measureId: saved.measureId,
-    uptake: edited.uptakePercent === undefined ? saved.uptake : edited.uptakePercent / 100,
+    uptake: edited.uptakePercent === undefined ? saved.uptake : share(edited.uptakePercent),
     startDay: dayOf(dayZero, edited.from) + shiftDays,
     endDay: edited.to === undefined ? null : dayOf(dayZero, edited.to) + 1 + shiftDays,
   };

@@ -1,6 +1,14 @@
-/** Width of a text in Noto Sans, estimated: labels only need to keep out of each other's way. */
+/** Width of a text in Noto Sans, estimated by classes of letters: labels only need to keep out of each other's way. */
 export const textWidth = (text: string, fontPx: number): number => [...text].reduce((sum, c) => sum + widthOf(c), 0) * fontPx;
-const widthOf = (c: string) => (/[ilj.,:;'|!]/.test(c) ? 0.29 : /[mwMW%]/.test(c) ? 0.87 : /[A-Z]/.test(c) ? 0.66 : c === " " ? 0.27 : 0.57);
+const CLASSES: [RegExp, number][] = [
+  [/[ijl.,:;'|!\s]/, 0.27],
+  [/[frt()-]/, 0.37],
+  [/[sczkvxy]/, 0.5],
+  [/[mMW%]/, 0.92],
+  [/[w]/, 0.79],
+  [/[A-Z]/, 0.65],
+];
+const widthOf = (c: string): number => CLASSES.find(([letters]) => letters.test(c))?.[1] ?? 0.59;
 
 /** Cuts a text to a width, with an ellipsis; the whole text stands in the chart's table. */
 export function fitText(text: string, fontPx: number, widthPx: number): string {

@@ -82,11 +82,11 @@ export function settlingCurve(input: SettlingInput, size: SettlingSize): Settlin
     curve: line()(points) ?? "",
     none: noneMark,
     marks,
-    labels: labelsOf(input, noneMark, marks, points, { x: box.left + 2, y: 2, width: box.right - box.left, height: box.bottom - 4 }, px(x(1))),
+    labels: labelsOf(input, noneMark, marks, points, { x: box.left + 2, y: 2, width: box.right - box.left, height: box.bottom - 4 }, px(x(1)), narrow ? 1 : 2),
   };
 }
 
-function labelsOf(input: SettlingInput, none: Cross, marks: SettlingModel["marks"], curve: [number, number][], bounds: Box, line: number): SettlingLabel[] {
+function labelsOf(input: SettlingInput, none: Cross, marks: SettlingModel["marks"], curve: [number, number][], bounds: Box, line: number, linesMax: number): SettlingLabel[] {
   const wish = (at: Cross, lines: string[], clear: number): Wanted & { lines: string[] } => ({
     x: at.x,
     y: at.y,
@@ -99,7 +99,8 @@ function labelsOf(input: SettlingInput, none: Cross, marks: SettlingModel["marks
     wish(none, input.none.text, 5),
     ...marks.flatMap(({ held, scheduled }, index) => {
       const point = input.packages[index]!;
-      return [wish(scheduled, point.scheduledText, TILE / 2), wish(held, point.heldText, TILE / 2)];
+      // Where there is little room the mark's letter and fill say which it is; the caption says what fill means.
+      return [wish(scheduled, point.scheduledText.slice(0, linesMax), TILE / 2), wish(held, point.heldText.slice(0, linesMax), TILE / 2)];
     }),
   ];
   const tile = ({ x, y }: Cross): Box => ({ x: x - TILE / 2 - 1, y: y - TILE / 2 - 1, width: TILE + 2, height: TILE + 2 });

@@ -65,7 +65,8 @@ export function thresholdLadder({ none, packages }: LadderInput, size: LadderSiz
   const mirror = logTicks([1 / domain[1], 1 / domain[0]], (r) => scale(1 / r), 22);
   const groups = packages.length === 0 ? [[]] : chunks(packages, size.perPanel);
   return groups.map((group) => {
-    const columnPx = (right - LEFT - size.noneWidthPx) / size.perPanel;
+    // On a phone the last package may have the width to itself; beside each other all columns are alike.
+    const columnPx = (right - LEFT - size.noneWidthPx) / (size.perPanel > 2 ? size.perPanel : Math.max(1, group.length));
     const line = px(scale(1));
     const noneX = LEFT + Math.min(30, size.noneWidthPx / 2);
     const roomy = size.noneWidthPx >= 72;
@@ -101,8 +102,10 @@ function whiskerAt({ mid, low, high }: Range, x: number, scale: (value: number) 
 }
 
 function column(each: LadderPackage, start: number, width: number, from: number, scale: (value: number) => number, bottom: number): LadderColumn {
-  const x1 = start + 18;
-  const x2 = x1 + 22;
+  const tight = width < 112;
+  const x1 = start + (tight ? 15 : 18);
+  const x2 = x1 + (tight ? 17 : 22);
+  const nameX = x2 + (tight ? 6 : 8);
   const shift = Math.log(each.ratio.mid) - Math.log(from);
   const sorted = [...each.rungs].sort((a, b) => a.startDay - b.startDay || b.logShare - a.logShare);
   let share = 0;
@@ -115,19 +118,19 @@ function column(each: LadderPackage, start: number, width: number, from: number,
   const labels = spread(steps.map(({ middle }) => middle), NAME_GAP, [24, bottom - 6]);
   return {
     letter: each.letter,
-    name: wrapText(each.name, 13.5, width - 30, 2),
+    name: wrapText(each.name, 13.5, width - 28, 2),
     value: each.ratio,
     chanceEnough: each.chanceEnough,
     rails: { x1: px(x1), x2: px(x2), from: px(scale(from)), to: px(scale(each.ratio.mid)) },
     rungs: steps.map(({ rung, y, middle }, index) => ({
       key: rung.key,
-      name: fitText(rung.name, 12, width - 50),
+      name: fitText(rung.name, 12, start + width - nameX),
       y: px(y),
-      labelX: px(x2 + 8),
+      labelX: px(nameX),
       labelY: px(labels[index] ?? middle),
       leader: Math.abs((labels[index] ?? middle) - middle) > 5,
     })),
-    whisker: whiskerAt(each.ratio, x1 - 12, scale),
+    whisker: whiskerAt(each.ratio, x1 - (tight ? 10 : 12), scale),
     label: { x: px(x1 - 17), y: px(scale(highest(each.ratio)) - 22) },
     footX: px(x1 - 7),
   };

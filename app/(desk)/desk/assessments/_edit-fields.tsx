@@ -9,10 +9,10 @@ export type EditableItem = { measureId: string; measure: string; /** Set where u
 export type EditablePackage = { letter: string; name: string; version: number; items: EditableItem[] };
 type Errors = (name: string) => string[] | undefined;
 
-function Cell({ meta, label, errors, type, suffix }: { meta: FieldMetadata<unknown>; label: { short: ReactNode; full: string }; errors: Errors; type: "text" | "date"; suffix?: ReactNode }) {
+function Cell({ meta, label, errors, type }: { meta: FieldMetadata<unknown>; label: { short: ReactNode; full: string }; errors: Errors; type: "text" | "date" }) {
   const found = errors(meta.name);
   return (
-    <div className="min-w-0">
+    <div className={`min-w-0 ${type === "text" ? "col-span-2 max-w-[112px] md:col-span-1" : ""}`}>
       <label htmlFor={meta.id} className="md:sr-only">
         <span aria-hidden="true">{label.short}</span>
         <span className="sr-only">{label.full}</span>
@@ -29,7 +29,6 @@ function Cell({ meta, label, errors, type, suffix }: { meta: FieldMetadata<unkno
         autoComplete="off"
         className={`inp ${found?.length ? "err" : ""}`}
       />
-      {suffix}
       {found?.length ? (
         <p id={meta.errorId} className="ferr">
           {found.join(" ")}
@@ -45,6 +44,7 @@ export function PackageFields({ meta, own, errors }: { meta: FieldMetadata<Edite
   const fields = meta.getFieldset();
   const items = fields.items.getFieldList() as unknown as FieldMetadata<EditedItem>[];
   const columns = "md:grid-cols-[minmax(0,1fr)_112px_176px_176px]";
+  const lines = `grid-cols-2 ${columns}`;
   const wrong = Object.keys(meta.allErrors).length > 0 || own.items.some((_, index) => ["from", "to", "uptakePercent"].some((field) => errors(`${fields.items.name}[${index}].${field}`)?.length));
   return (
     <details className="border-t border-hair py-2" {...(wrong ? { open: true } : {})}>
@@ -69,21 +69,21 @@ export function PackageFields({ meta, own, errors }: { meta: FieldMetadata<Edite
         const cell = item.getFieldset();
         const names = { measure: line.measure, letter: own.letter };
         return (
-          <fieldset key={item.key} className={`grid items-start gap-x-4 gap-y-2 border-b border-hair py-2 ${columns}`}>
+          <fieldset key={item.key} className={`grid items-start gap-x-4 gap-y-2 border-b border-hair py-2 ${lines}`}>
             <legend className="sr-only">{line.measure}</legend>
             <input type="hidden" name={cell.measureId.name} value={line.measureId} />
-            <span aria-hidden="true" className="pt-2 font-medium">
+            <span aria-hidden="true" className="col-span-2 pt-2 font-medium md:col-span-1">
               {line.measure}
             </span>
             {line.uptakeRange === null ? (
               <Cell meta={cell.uptakePercent as FieldMetadata<unknown>} label={{ short: t("uptake"), full: t("uptakeOf", names) }} errors={errors} type="text" />
             ) : (
-              <span className="sm pt-2">
+              <span className="sm col-span-2 pt-2 md:col-span-1">
                 {line.uptakeRange} <span className="dim block">{t("uptakeRangeHint")}</span>
               </span>
             )}
             <Cell meta={cell.from as FieldMetadata<unknown>} label={{ short: t("from"), full: t("fromOf", names) }} errors={errors} type="date" />
-            <Cell meta={cell.to as FieldMetadata<unknown>} label={{ short: `${t("to")}. ${t("toHint")}`, full: t("toOf", names) }} errors={errors} type="date" />
+            <Cell meta={cell.to as FieldMetadata<unknown>} label={{ short: t("to"), full: t("toOf", names) }} errors={errors} type="date" />
           </fieldset>
         );
       })}
