@@ -30,7 +30,7 @@ function stepSource(latent: boolean): string {
     if (latent) lines.push(`  const o${k} = sigma * e${k}${over};`, `  const e${k + 1} = n${k} - o${k};`, `  const i${k + 1} = o${k} - z${k + 1};`);
     else lines.push(`  const i${k + 1} = n${k} - z${k + 1};`);
   }
-  const size = (k: number) => `Math.max(Math.abs(s${k}) / s0, (${infected.map((v) => `Math.abs(${v}${k})`).join(" + ")}) / (${infected.map((v) => `${v}0`).join(" + ")}))`;
+  const size = (k: number) => `Math.max(s0 > 0 ? Math.abs(s${k}) / s0 : 0, (${infected.map((v) => `Math.abs(${v}${k})`).join(" + ")}) / (${infected.map((v) => `${v}0`).join(" + ")}))`;
   lines.push(
     `  const last = ${size(ORDER)};`,
     `  const before = ${size(ORDER - 1)};`,

@@ -6,7 +6,7 @@
 import { tooManySteps } from "./errors";
 import type { Parameters } from "./model";
 import { findRoot } from "./numeric";
-import { INFECTED_LEAST, removalsToCome, type State, susceptibleAfter } from "./settled-state";
+import { INFECTED_LEAST, removalsToCome, SUSCEPTIBLE_LEAST, type State, susceptibleAfter } from "./settled-state";
 import { stepWithLatent, stepWithoutLatent, TAYLOR_ORDER } from "./taylor-step.generated";
 
 /** What one run through a schedule leaves behind; reused from run to run. */
@@ -43,6 +43,7 @@ export const TEN_YEARS_DAYS = 3650;
 /** Size of the last terms left out, relative to S and to E + I: about 1e-12 of the settled value, at half the steps of 1e-15. */
 const TOLERANCE = 1e-10;
 const STEP_DAYS_MAX = 60;
+const SHARE_LEAST = 1e-250;
 const STEPS_MAX = 100_000;
 /** Past the last switch, in search of the peak: more than a century with periods of days. */
 const SEARCH_STEPS_MAX = 5_000;
@@ -138,6 +139,9 @@ function advance(flow: Flow, run: Run, beta: number, day: number, daysMax: numbe
   if (++run.steps > STEPS_MAX) throw tooManySteps();
   if (flow.wants.belowOne) stepStart.set(y);
   const h = flow.step(y, coefficients, beta, flow.sigma, flow.gamma, daysMax, TOLERANCE);
+  // Before coefficients underflow, which would let a step grow without measure.
+  if (y[S]! * flow.population < SUSCEPTIBLE_LEAST) y[S] = 0;
+  if (y[E]! + y[I]! < SHARE_LEAST) y.fill(0, E, Z);
   if (flow.wants.peak) notePeak(run, flow.population, day, h);
   if (flow.wants.belowOne) noteBelowOne(flow, run, beta, day, h);
   return h;

@@ -93,8 +93,8 @@ export function stepWithLatent(y: Float64Array, c: Float64Array, beta: number, s
   const o13 = sigma * e13 * 0.07142857142857142;
   const e14 = n13 - o13;
   const i14 = o13 - z14;
-  const last = Math.max(Math.abs(s14) / s0, (Math.abs(e14) + Math.abs(i14)) / (e0 + i0));
-  const before = Math.max(Math.abs(s13) / s0, (Math.abs(e13) + Math.abs(i13)) / (e0 + i0));
+  const last = Math.max(s0 > 0 ? Math.abs(s14) / s0 : 0, (Math.abs(e14) + Math.abs(i14)) / (e0 + i0));
+  const before = Math.max(s0 > 0 ? Math.abs(s13) / s0 : 0, (Math.abs(e13) + Math.abs(i13)) / (e0 + i0));
   let h = Math.exp(Math.min(Math.log(tolerance / last) / 14, Math.log(tolerance / before) / 13));
   if (!(h < hMax)) h = hMax;
   y[0] = s0 + h * (s1 + h * (s2 + h * (s3 + h * (s4 + h * (s5 + h * (s6 + h * (s7 + h * (s8 + h * (s9 + h * (s10 + h * (s11 + h * (s12 + h * (s13 + h * (s14))))))))))))));
@@ -183,8 +183,8 @@ export function stepWithoutLatent(y: Float64Array, c: Float64Array, beta: number
   const s14 = -n13;
   const z14 = gamma * i13 * 0.07142857142857142;
   const i14 = n13 - z14;
-  const last = Math.max(Math.abs(s14) / s0, (Math.abs(i14)) / (i0));
-  const before = Math.max(Math.abs(s13) / s0, (Math.abs(i13)) / (i0));
+  const last = Math.max(s0 > 0 ? Math.abs(s14) / s0 : 0, (Math.abs(i14)) / (i0));
+  const before = Math.max(s0 > 0 ? Math.abs(s13) / s0 : 0, (Math.abs(i13)) / (i0));
   let h = Math.exp(Math.min(Math.log(tolerance / last) / 14, Math.log(tolerance / before) / 13));
   if (!(h < hMax)) h = hMax;
   y[0] = s0 + h * (s1 + h * (s2 + h * (s3 + h * (s4 + h * (s5 + h * (s6 + h * (s7 + h * (s8 + h * (s9 + h * (s10 + h * (s11 + h * (s12 + h * (s13 + h * (s14))))))))))))));
