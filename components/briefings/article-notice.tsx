@@ -3,11 +3,12 @@ import { LOCALES, type Locale } from "@/lib/i18n/locales";
 import type { ArticleNotice, ArticleWords, NoticeText } from "./article-types";
 
 /** What a reader must know before reading on: that this was corrected, withdrawn, or has a newer version. */
-export function Notice({ notice, locale, t }: { notice: ArticleNotice; locale: Locale; t: ArticleWords }) {
+export function Notice({ notice, locale, foreign, t }: { notice: ArticleNotice; locale: Locale; foreign: boolean; t: ArticleWords }) {
   const day = formatDay(notice.at, locale);
+  const own = foreign ? { lang: locale, dir: LOCALES[locale].dir } : {};
   if (notice.kind === "withdrawn") {
     return (
-      <div className="ntc">
+      <div className="ntc" {...own}>
         <p>
           <b>{t("notice.withdrawn", { day })}</b> <Said said={notice.text} locale={locale} /> {t("notice.withdrawnStill")}
         </p>
@@ -16,7 +17,7 @@ export function Notice({ notice, locale, t }: { notice: ArticleNotice; locale: L
   }
   if (notice.kind === "outdated") {
     return (
-      <div className="ntc">
+      <div className="ntc" {...own}>
         <p>
           <b>{t(notice.corrected ? "notice.mistake" : "notice.outdated", { day })}</b> <a href={notice.newestHref}>{t("notice.newest")}</a>
         </p>
@@ -24,7 +25,7 @@ export function Notice({ notice, locale, t }: { notice: ArticleNotice; locale: L
     );
   }
   return (
-    <div className="ntc">
+    <div className="ntc" {...own}>
       <p>
         <b>{t("notice.corrected", { day })}</b> <Said said={notice.cause} locale={locale} /> <Said said={notice.effect} locale={locale} />{" "}
         {notice.earlierHref ? <a href={notice.earlierHref}>{t("notice.earlier")}</a> : null}

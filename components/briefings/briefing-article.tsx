@@ -2,7 +2,7 @@ import { getTranslations } from "next-intl/server";
 import type { PartKey } from "@/lib/briefings/constants";
 import type { RenderedBriefing } from "@/lib/briefings/rendered";
 import { formatDay, formatTime } from "@/lib/i18n/dates";
-import { LOCALES } from "@/lib/i18n/locales";
+import { LOCALES, type Locale } from "@/lib/i18n/locales";
 import { Facts } from "./article-facts";
 import { Notice } from "./article-notice";
 import { Schedule } from "./article-schedule";
@@ -19,12 +19,15 @@ export async function BriefingArticle({
   content,
   notice,
   release,
+  readerLocale = content.locale,
   withCaution = false,
 }: {
   content: RenderedBriefing;
   notice?: ArticleNotice | undefined;
   /** Absent in previews: nothing is released yet. */
   release?: ArticleRelease | undefined;
+  /** Language of the page around it: the notice speaks it, also where the text stands in another. */
+  readerLocale?: Locale;
   /** Public pages have the caution in their foot; a preview shows it under the text. */
   withCaution?: boolean;
 }) {
@@ -40,7 +43,7 @@ export async function BriefingArticle({
         {release ? t("released", { day: day(release.publishedAt), time: formatTime(release.publishedAt) }) : t("notReleased")}
         {release && release.number > 1 ? ` · ${t("version", { number: release.number })}` : null}
       </p>
-      {notice ? <Notice notice={notice} locale={locale} t={t} /> : null}
+      {notice ? <Notice notice={notice} locale={readerLocale} foreign={readerLocale !== locale} t={await getTranslations({ locale: readerLocale, namespace: "Article" })} /> : null}
       <div className="pgrid">
         <div>
           {PARTS.map((part) => (

@@ -14,6 +14,7 @@ export function ErrorList({ state, title, errors, targets }: { state: State; tit
   const entries = Object.entries(state?.error ?? {}).filter(([, keys]) => keys && keys.length > 0);
   if (state?.status !== "error" || entries.length === 0) return null;
   return (
+    // biome-ignore lint/a11y/noAutofocus: the reader has just sent the form; without scripts nothing else leads them here
     <div className="note bad" role="alert" tabIndex={-1} autoFocus>
       <b>{title}</b>
       <ul>

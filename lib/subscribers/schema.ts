@@ -24,7 +24,8 @@ export const ChangeSubscriptionInput = LinkInput.extend({ locale });
 function tidyAddress(typed: string): string {
   const text = typed.trim().normalize("NFC").toLowerCase();
   const at = text.lastIndexOf("@");
-  if (at < 0 || /^[\x20-\x7e]*$/.test(text)) return text;
+  // Only a domain in another script is rewritten; the address parser would silently drop line breaks and tabs.
+  if (at < 0 || !/\P{ASCII}/u.test(text.slice(at)) || /[\s\p{Cc}]/u.test(text)) return text;
   try {
     return `${text.slice(0, at)}@${new URL(`http://${text.slice(at + 1)}`).hostname}`;
   } catch {

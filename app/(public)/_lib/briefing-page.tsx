@@ -48,6 +48,7 @@ export async function BriefingPage({
       {content.locale === locale ? null : <FallbackNote locale={locale} shown={content.locale} />}
       <BriefingArticle
         content={content}
+        readerLocale={locale}
         notice={await noticeOf(release, versions, content, locale)}
         release={{
           publishedAt: release.publishedAt,
@@ -64,7 +65,7 @@ export async function BriefingPage({
 
 async function noticeOf(release: PublishedRelease, versions: PublishedRelease[], content: RenderedBriefing, locale: Locale): Promise<ArticleNotice | undefined> {
   const said = (value: Partial<Record<Locale, string>>) => {
-    const chosen = chooseSaid(value, content.locale);
+    const chosen = chooseSaid(value, locale);
     return chosen && chosen.value !== "" ? { text: chosen.value, lang: chosen.lang } : null;
   };
   const withdrawal = withdrawalOf(versions[0] ?? release);
@@ -77,7 +78,7 @@ async function noticeOf(release: PublishedRelease, versions: PublishedRelease[],
   if (release.kind !== "correction") return undefined;
   const before = versions.find(({ number }) => number < release.number);
   const beforeContent = before ? await findContent(before.id, content.locale) : null;
-  const chosen = chooseSaid(release.correction, content.locale);
+  const chosen = chooseSaid(release.correction, locale);
   return {
     kind: "corrected",
     at: release.publishedAt,
