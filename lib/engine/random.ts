@@ -23,27 +23,29 @@ const uniform = (generator: { next(): number }): number =>
   ((generator.next() >>> 5) * 0x400_0000 + (generator.next() >>> 6)) / 2 ** 53;
 
 /**
- * One dimension of a Latin hypercube, as standard normal scores: each of `count` equal strata holds exactly one draw.
+ * One dimension of a Latin hypercube: each of `count` equal strata of [0, 1) holds exactly one point, in random order.
  * Every input has a stream of its own, named, so that the order of measures or packages changes no draw.
  * @param seed whole number ≥ 0
  * @see McKay, Beckman & Conover (1979), Technometrics 21:239
  */
-export function latinHypercubeScores(count: number, seed: number, name: string): Float64Array {
-  const low = seed % 0x1_0000_0000 | 0;
+export function latinHypercube(count: number, seed: number, name: string): Float64Array {
+  const low = (seed % 0x1_0000_0000) | 0;
   const high = Math.floor(seed / 0x1_0000_0000) | 0;
   const generator = xoroshiro128plus(scatter(scatter(scatter(low) ^ high) ^ hashName(name)));
   for (let i = 0; i < WARM_UP; i++) generator.next();
-  const scores = new Float64Array(count);
-  for (let i = 0; i < count; i++) {
-    // The middle of the last representable step keeps the score finite at both ends.
-    const p = (i + uniform(generator)) / count;
-    scores[i] = normalQuantile(Math.min(Math.max(p, 1e-16), 1 - 2 ** -53));
-  }
+  const points = new Float64Array(count);
+  for (let i = 0; i < count; i++) points[i] = (i + uniform(generator)) / count;
   for (let i = count - 1; i > 0; i--) {
     const j = uniformInt(generator, 0, i);
-    const held = scores[i]!;
-    scores[i] = scores[j]!;
-    scores[j] = held;
+    const held = points[i]!;
+    points[i] = points[j]!;
+    points[j] = held;
   }
-  return scores;
+  return points;
+}
+
+/** `latinHypercube` as standard normal scores. */
+export function latinHypercubeScores(count: number, seed: number, name: string): Float64Array {
+  // Kept off 0 and 1, where the score would be infinite.
+  return latinHypercube(count, seed, name).map((p) => normalQuantile(Math.min(Math.max(p, 1e-16), 1 - 2 ** -53)));
 }
