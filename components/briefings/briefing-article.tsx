@@ -1,6 +1,7 @@
 import { getTranslations } from "next-intl/server";
 import type { PartKey } from "@/lib/briefings/constants";
 import type { RenderedBriefing } from "@/lib/briefings/rendered";
+import { capitalise } from "@/lib/i18n/capitalise";
 import { formatDay, formatTime } from "@/lib/i18n/dates";
 import { LOCALES, type Locale } from "@/lib/i18n/locales";
 import { Facts } from "./article-facts";
@@ -38,7 +39,7 @@ export async function BriefingArticle({
     <article lang={locale} dir={LOCALES[locale].dir}>
       <h1>{content.title}</h1>
       <p className="pmeta">
-        {t("meta", { illness: content.outbreakName, place: content.place, number: content.briefingNumber })}
+        {t("meta", { illness: capitalise(content.outbreakName, locale), place: content.place, number: content.briefingNumber })}
         {" · "}
         {release ? t("released", { day: day(release.publishedAt), time: formatTime(release.publishedAt) }) : t("notReleased")}
         {release && release.number > 1 ? ` · ${t("version", { number: release.number })}` : null}

@@ -1,4 +1,5 @@
 import { getTranslations } from "next-intl/server";
+import { capitalise } from "@/lib/i18n/capitalise";
 import type { Locale } from "@/lib/i18n/locales";
 
 /** What no page of figures goes without: orders and emergency instructions first, then what the figures are. */
@@ -11,7 +12,7 @@ export async function Caution({ locale, demonstration }: { locale: Locale; demon
       </p>
       {demonstration ? (
         <p>
-          <b>{demonstration === true ? t("demonstration") : t("demonstrationOf", demonstration)}</b>
+          <b>{demonstration === true ? t("demonstration") : t("demonstrationOf", { place: demonstration.place, illness: capitalise(demonstration.illness, locale) })}</b>
         </p>
       ) : null}
     </>

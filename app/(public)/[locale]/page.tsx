@@ -3,6 +3,7 @@ import { getTranslations } from "next-intl/server";
 import { BriefingCard } from "@/components/public/briefing-card";
 import { Changes } from "@/components/public/changes";
 import { Today } from "@/components/public/today";
+import { capitalise } from "@/lib/i18n/capitalise";
 import { changesOf, withdrawalOf } from "@/lib/publications/published";
 import { readLocale } from "../_lib/locale-param";
 import { pageMetadata } from "../_lib/metadata";
@@ -25,12 +26,14 @@ export default async function Home({ params }: Props) {
   const [t, current, releases] = await Promise.all([getTranslations("Public"), listCurrent(locale), listReleases()]);
   const inForce = current.filter(({ release }) => !withdrawalOf(release));
   const withdrawn = current.filter(({ release }) => withdrawalOf(release));
-  const about = new Map(inForce.map(({ release, content }) => [release.outbreakId, content]));
-  const [only] = about.size === 1 ? [...about.values()] : [];
+  const contents = inForce.map(({ content }) => content);
+  const oneOutbreak = new Set(inForce.map(({ release }) => release.outbreakId)).size === 1;
+  // Place and illness as the reader's language names them, where any briefing has that language.
+  const only = oneOutbreak ? (contents.find((content) => content.locale === locale) ?? contents[0]) : undefined;
   const today = new Date().toISOString().slice(0, 10);
   return (
     <PublicPage locale={locale} path="" demonstration={only ? { place: only.place, illness: only.outbreakName } : undefined}>
-      <h1>{only ? t("home.titleOf", { illness: only.outbreakName, place: only.place }) : t("home.title")}</h1>
+      <h1>{only ? t("home.titleOf", { illness: capitalise(only.outbreakName, only.locale), place: only.place }) : t("home.title")}</h1>
       <p className="col mut plead">{t("home.lead")}</p>
       <div className="pgrid pgap">
         <div>

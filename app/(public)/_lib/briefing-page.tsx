@@ -5,6 +5,7 @@ import type { ArticleNotice } from "@/components/briefings/article-types";
 import { BriefingArticle } from "@/components/briefings/briefing-article";
 import { FallbackNote } from "@/components/public/fallback-note";
 import type { RenderedBriefing } from "@/lib/briefings/rendered";
+import { capitalise } from "@/lib/i18n/capitalise";
 import type { Locale } from "@/lib/i18n/locales";
 import { changedFigures } from "@/lib/publications/changed-figures";
 import { chooseSaid, chooseText, type PublishedRelease, withdrawalOf } from "@/lib/publications/published";
@@ -19,7 +20,7 @@ export async function briefingMetadata(release: PublishedRelease, locale: Locale
   const t = await getTranslations({ locale: text.locale, namespace: "Article" });
   return pageMetadata({
     title: text.title,
-    description: t("meta", { illness: content.outbreakName, place: content.place, number: content.briefingNumber }),
+    description: t("meta", { illness: capitalise(content.outbreakName, content.locale), place: content.place, number: content.briefingNumber }),
     locale,
     path,
     locales: release.texts.map((each) => each.locale),
