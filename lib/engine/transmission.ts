@@ -65,6 +65,7 @@ export function startState(given: TransmissionGiven, value: number, rates: Rates
   let latent = 0;
   for (let step = 0; step < FIXED_POINT_STEPS; step++) {
     const next = consistentExposed(rateWith(rest - latent), { removalRate, onsetRate }, day);
+    if (next >= rest) throw outsideDomain("outbreak.exposed", `must be given: the number that goes with this growth, ${inWords(next)}, is more than the ${inWords(rest)} who are left`);
     const settled = Math.abs(next - latent) <= 4 * Number.EPSILON * next;
     latent = next;
     if (settled) return { transmissionRate: rateWith(rest - latent), susceptible: rest - latent, exposed: latent };

@@ -69,6 +69,23 @@ describe("piecewise constant transmission", () => {
   });
 });
 
+describe("measures never lifted are charged until E + I stays below 1", () => {
+  test.each(named(rows))("%s", (_, row) => {
+    const input = inputOf(row);
+    // A cut of 0 for ever changes nothing but the days that are charged.
+    const nothing = { id: "nothing", name: "Nothing", cut: 0, ladder: null, maxDays: null, costs: [{ payer: "public" as const, perDay: 7 }] };
+    const [first] = input.packages;
+    const items = [...first!.items, { measure: "nothing", startDay: 0, endDay: null }];
+    const found = assess({ ...input, measures: [...input.measures, nothing], packages: [{ ...first!, items }] }).packages[0]!;
+    // The row gives the end of the half day in which it happens.
+    const end = Number(row.expected.firstStepWithEplusIBelowExtinction);
+    expect(found.chargedUntilDay).toBeGreaterThan(end - 0.5);
+    expect(found.chargedUntilDay).toBeLessThanOrEqual(end);
+    expectRelative(found.cost.total, 7 * found.chargedUntilDay!, 1e-12, "cost");
+    expectRelative(found.finalDeaths.asScheduled, row.expected.finalDeaths, 1e-8, "final deaths");
+  });
+});
+
 test("every row of the file is tested", () => expectAccounted(rows, rows, {}));
 
 test("largest errors over the file", () => {

@@ -107,7 +107,7 @@ test("fuzzed files: refused with a path, or a result without a non-finite number
       }
       expect(performance.now() - began, "no hang").toBeLessThan(5_000);
     }),
-    { numRuns: 1500 },
+    { numRuns: 400 },
   );
   expect(Math.min(refused, computed)).toBeGreaterThan(20);
 });
