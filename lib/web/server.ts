@@ -8,6 +8,7 @@ import next from "next";
 import { env } from "../env";
 import { deskPolicy, PUBLIC_POLICY, securityHeaders, withoutScripts } from "./headers";
 import { transformHtml } from "./html-response";
+import { NotFoundPages } from "./not-found-pages";
 import { cacheControl, isPublicPath, needsOrigin } from "./paths";
 
 const LOOPBACK = /^(?:localhost|127(?:\.\d{1,3}){3}|\[::1\])(?::\d+)?$/;
@@ -22,6 +23,8 @@ const port = Number(process.env["PORT"] ?? (publicUrl.port || 3000));
 const hostname = process.env["HOST"] ?? "127.0.0.1";
 const dev = process.env["EBBMARK_DEV"] === "1";
 const headers = securityHeaders(publicUrl.protocol === "https:");
+
+const notFoundPages = new NotFoundPages();
 
 const app = next({ dev, hostname, port });
 await app.prepare();
@@ -78,8 +81,9 @@ async function answer(request: IncomingMessage, response: ServerResponse): Promi
     if (!path.startsWith("/_next/static/")) request.headers["accept-encoding"] = "identity";
     transformHtml(response, accept, (html, set) => {
       set("Cache-Control", cacheControl(path));
-      set("Content-Security-Policy", isPublic ? PUBLIC_POLICY : deskPolicy(html));
-      return isPublic ? withoutScripts(html) : html;
+      const missing = path.startsWith("/desk") ? undefined : notFoundPages.instead(response.statusCode, html, path);
+      set("Content-Security-Policy", isPublic || missing ? PUBLIC_POLICY : deskPolicy(html));
+      return missing ?? (isPublic ? withoutScripts(html) : html);
     });
   }
   await handle(request, response);
@@ -94,6 +98,7 @@ server.requestTimeout = 60_000;
 server.headersTimeout = 15_000;
 server.listen(port, hostname, async () => {
   await refresh();
+  refreshAtMidnight();
   console.log(JSON.stringify({ level: "info", at: new Date().toISOString(), message: "web ready", url: publicUrl.origin }));
 });
 
@@ -103,6 +108,16 @@ async function refresh(): Promise<void> {
   const signature = createHmac("sha256", settings.EBBMARK_SECRET).update(`revalidate:${at}`).digest("hex");
   const target = `http://${hostname}:${port}/api/internal/revalidate`;
   await fetch(target, { method: "POST", headers: { "x-at": at, "x-signature": signature } }).catch(() => undefined);
+  if (!dev) await notFoundPages.keep(`http://${hostname}:${port}`, publicUrl.host);
+}
+
+/** Public pages name the day, so they are made anew when it changes. */
+function refreshAtMidnight(): void {
+  const now = new Date();
+  const midnight = Date.UTC(now.getUTCFullYear(), now.getUTCMonth(), now.getUTCDate() + 1, 0, 0, 1);
+  setTimeout(() => {
+    refresh().finally(refreshAtMidnight);
+  }, midnight - now.getTime()).unref();
 }
 
 let stopping = false;
