@@ -1,3 +1,4 @@
+import { get } from "node:http";
 import { isLocale, LOCALE_CODES, type Locale, SOURCE_LOCALE } from "../i18n/locales";
 
 /**
@@ -11,8 +12,8 @@ export class NotFoundPages {
   async keep(origin: string, host: string): Promise<void> {
     await Promise.all(
       LOCALE_CODES.map(async (locale) => {
-        const answer = await fetch(`${origin}/${locale}/404`, { headers: { host } }).catch(() => null);
-        if (answer?.ok) this.pages.set(locale, await answer.text());
+        const page = await read(`${origin}/${locale}/404`, host);
+        if (page !== null) this.pages.set(locale, page);
       }),
     );
   }
@@ -23,4 +24,15 @@ export class NotFoundPages {
     const named = path.split("/")[1];
     return this.pages.get(isLocale(named) ? named : SOURCE_LOCALE);
   }
+}
+
+// Not fetch(): it doesn't let a program choose the Host.
+function read(url: string, host: string): Promise<string | null> {
+  return new Promise((resolve) => {
+    get(url, { headers: { host } }, (answer) => {
+      const chunks: Buffer[] = [];
+      answer.on("data", (chunk: Buffer) => chunks.push(chunk));
+      answer.on("end", () => resolve(answer.statusCode === 200 ? Buffer.concat(chunks).toString("utf8") : null));
+    }).on("error", () => resolve(null));
+  });
 }
