@@ -1,17 +1,10 @@
-import { readFileSync } from "node:fs";
 import { describe, expect, test } from "vitest";
 import { canonicalJson, growthRateAt, sha256Hex, startState } from "@/lib/engine";
-import { taylorStepSource } from "@/lib/engine/generate-taylor-step";
 import { findRoot, normalQuantile, quantileSorted } from "@/lib/engine/numeric";
 import { priceComparison } from "@/lib/engine/prices";
 import { positiveScale, shareScale, sidesOf, spread } from "@/lib/engine/quantities";
 import { latinHypercubeScores } from "@/lib/engine/random";
 import { piecesOf } from "@/lib/engine/windows";
-
-test("the generated Taylor step is what its program writes", () => {
-  const kept = readFileSync(new URL("../../../lib/engine/taylor-step.generated.ts", import.meta.url), "utf8");
-  expect(kept).toBe(taylorStepSource());
-});
 
 describe("quantiles of the standard normal (values from tables; Wichura 1988 gives the algorithm)", () => {
   test.each([
@@ -45,8 +38,7 @@ describe("two-piece normal on a scale (checks/09, computed with mpmath 1.3.0)", 
       [{ low: 0, central: 0.3, high: 1 }, "linearShare"],
     ] as const) {
       const found = [...spread(value, scale, z)].map((x) => Number(x.toPrecision(12)));
-      const wanted = scale === "logOfRest" ? [value.low, value.central, value.high] : [value.low, value.central, value.high];
-      expect(found.toSorted((a, b) => a - b), scale).toEqual(wanted);
+      expect(found, scale).toEqual([value.low, value.central, value.high]);
     }
   });
   test("which scale", () => {
