@@ -53,7 +53,7 @@ export function assess(raw: AssessmentInput, options: AssessOptions = {}): Asses
     inputHash: hashInput(raw),
     withoutMeasures: { ...without.result, uncertainty: drawn?.without ?? null },
     packages: results,
-    comparison: { ...priceComparison(priced), pairs: drawn?.pairs ?? [] },
+    comparison: { ...priceComparison(priced, drawn?.difference), pairs: drawn?.pairs ?? [] },
     diagnostics: diagnose(checks, p.population, drawn?.refusedDraws ?? 0),
     warnings: outbreakWarnings(input, p, {
       finalDeaths: without.result.finalDeaths,

@@ -55,6 +55,9 @@ export function costPerDeath(cost: number, deathsAverted: number): number | null
   return Number.isFinite(quotient) ? quotient : null;
 }
 
+/** What one package costs and averts beyond another. */
+export type Difference = { cost: number; deathsAverted: number };
+
 /** A package as the price plane sees it. */
 export type Priced = { id: string; cost: number; deathsAverted: number };
 
@@ -62,9 +65,10 @@ export type Priced = { id: string; cost: number; deathsAverted: number };
  * Which packages are worth their price: simple dominance (another averts at least as much for no more), then extended
  * dominance (a mixture of two others does), then incremental ratios along what is left, from "none" on.
  * Ties are broken by id, so that the answer never depends on the order of the input.
+ * @param difference what the second package costs and averts beyond the first: where draws exist, medians of paired differences
  * @see Drummond et al. (2015), Methods for the Economic Evaluation of Health Care Programmes, 4th ed., ch. 4
  */
-export function priceComparison(packages: readonly Priced[]): Omit<Comparison, "pairs"> {
+export function priceComparison(packages: readonly Priced[], difference?: (from: string, to: string) => Difference): Omit<Comparison, "pairs"> {
   const none: Priced = { id: "none", cost: 0, deathsAverted: 0 };
   const all = [none, ...packages].sort((a, b) => a.cost - b.cost || b.deathsAverted - a.deathsAverted || (a.id === "none" ? -1 : b.id === "none" ? 1 : a.id < b.id ? -1 : 1));
   const dominated: Comparison["dominated"] = [];
@@ -85,8 +89,7 @@ export function priceComparison(packages: readonly Priced[]): Omit<Comparison, "
   }
   const incremental = hull.slice(1).map((to, index) => {
     const from = hull[index]!;
-    const cost = to.cost - from.cost;
-    const deathsAverted = to.deathsAverted - from.deathsAverted;
+    const { cost, deathsAverted } = difference?.(from.id, to.id) ?? { cost: to.cost - from.cost, deathsAverted: to.deathsAverted - from.deathsAverted };
     return { from: from.id, to: to.id, cost, deathsAverted, ratio: costPerDeath(cost, deathsAverted) };
   });
   return {

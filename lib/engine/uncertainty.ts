@@ -4,8 +4,8 @@ import type { Plan } from "./measure-effects";
 import type { Parameters } from "./model";
 import { drawOutbreak, drawPackage, newOutbreakSample, newPackageSample, usableFactors } from "./one-draw";
 import type { ParametersAt } from "./outbreak";
-import type { Tariff } from "./prices";
-import { shareError, shareOf } from "./statistics";
+import type { Difference, Tariff } from "./prices";
+import { shareError, shareOf, summarise } from "./statistics";
 import { outbreakSummary, packageSummary } from "./summaries";
 import type { Comparison, PackageUncertainty, WithoutMeasuresResult } from "./types";
 
@@ -15,6 +15,8 @@ export type DrawsOutcome = {
   without: NonNullable<WithoutMeasuresResult["uncertainty"]>;
   packages: PackageUncertainty[];
   pairs: Comparison["pairs"];
+  /** Medians of paired differences, `to` less `from`; "none" is no further measures. */
+  difference: (from: string, to: string) => Difference;
   refusedDraws: number;
 };
 
@@ -44,16 +46,16 @@ export function runDraws(parametersAt: ParametersAt, plans: readonly Plan[], tar
 
   const outbreak = newOutbreakSample(usable.length);
   each(0, ({ p }, row) => drawOutbreak(p, outbreak, row));
-  // One package after the other: only one's sample is held at a time, but for the deaths that it averts.
-  const averted: Float64Array[] = [];
+  // One package after the other: only one's sample is held at a time, but for what it costs and averts.
+  const kept: Kept[] = [];
   const packages = plans.map((plan, index) => {
     const sample = newPackageSample(plan, usable.length);
     each(index + 1, ({ p, draw }, row) => drawPackage(p, plan, tariffs[index]!, draw, sample, outbreak, row));
-    averted.push(sample.figures.avertedAsScheduled);
+    kept.push({ id: plan.id, cost: sample.figures.total, averted: sample.figures.avertedAsScheduled });
     return packageSummary(sample, plan);
   });
   progress.onProgress?.(1);
-  return { without: outbreakSummary(outbreak), packages, pairs: pairsOf(plans, averted), refusedDraws: draws - usable.length };
+  return { without: outbreakSummary(outbreak), packages, pairs: pairsOf(kept), difference: differencesOf(kept, usable.length), refusedDraws: draws - usable.length };
 }
 
 type Drawn = { draw: number; p: Parameters };
@@ -80,12 +82,21 @@ function parametersOrNull(parametersAt: ParametersAt, draw: number): Parameters 
   }
 }
 
-function pairsOf(plans: readonly Plan[], averted: readonly Float64Array[]): Comparison["pairs"] {
-  return plans.flatMap((a, i) =>
-    plans.flatMap((b, j) => {
-      if (i === j) return [];
-      const chanceAvertsMore = shareOf(averted[i]!, (value, row) => value > averted[j]![row]!);
-      return [{ a: a.id, b: b.id, chanceAvertsMore, monteCarloError: shareError(chanceAvertsMore, averted[i]!.length) }];
+type Kept = { id: string; cost: Float64Array; averted: Float64Array };
+
+function pairsOf(kept: readonly Kept[]): Comparison["pairs"] {
+  return kept.flatMap((a) =>
+    kept.flatMap((b) => {
+      if (a === b) return [];
+      const chanceAvertsMore = shareOf(a.averted, (value, row) => value > b.averted[row]!);
+      return [{ a: a.id, b: b.id, chanceAvertsMore, monteCarloError: shareError(chanceAvertsMore, a.averted.length) }];
     }),
   );
+}
+
+function differencesOf(kept: readonly Kept[], rows: number): DrawsOutcome["difference"] {
+  const nothing: Kept = { id: "none", cost: new Float64Array(rows), averted: new Float64Array(rows) };
+  const of = (id: string) => kept.find((each) => each.id === id) ?? nothing;
+  const median = (from: Float64Array, to: Float64Array) => summarise(to.map((value, row) => value - from[row]!)).interval.median;
+  return (from, to) => ({ cost: median(of(from).cost, of(to).cost), deathsAverted: median(of(from).averted, of(to).averted) });
 }

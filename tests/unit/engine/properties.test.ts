@@ -1,3 +1,4 @@
+import { readFileSync } from "node:fs";
 import fc from "fast-check";
 import { describe, expect, test } from "vitest";
 import { type AssessmentInput, assess, otherFixedPoint, settledState } from "@/lib/engine";
@@ -120,6 +121,16 @@ describe("draws", () => {
     const { median, low, high } = certain.uncertainty!.finalDeaths.asScheduled;
     expect([low, high]).toEqual([median, median]);
     near(median, certain.finalDeaths.asScheduled, 1e-12);
+  });
+  test("what one package costs and averts beyond another is the median of paired differences", () => {
+    const demo = JSON.parse(readFileSync(new URL("../../../db/demo/kelmaren.json", import.meta.url), "utf8")) as AssessmentInput;
+    const { comparison, packages } = assess({ ...demo, uncertainty: { draws: 400, seed: 5 } });
+    const [first, second] = comparison.incremental;
+    const firstFigures = packages.find(({ id }) => id === first!.to)!.uncertainty!;
+    expect(first!.from).toBe("none");
+    expect(first!.deathsAverted).toBe(firstFigures.deathsAverted.asScheduled.median);
+    expect(first!.cost).toBe(firstFigures.cost.total.median);
+    expect(second!.ratio).toBeCloseTo(second!.cost / second!.deathsAverted, 9);
   });
   test("a calculation can be stopped between draws", () => {
     let asked = 0;

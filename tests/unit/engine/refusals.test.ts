@@ -124,6 +124,10 @@ describe("the command line", () => {
     expect([status, stdout]).toEqual([2, ""]);
     expect(stderr.trim().split("\n").toSorted()).toEqual(["colour: is unknown; remove it or check its spelling", "horizonDays: must be at least 1 and at most 36,500"]);
   });
+  test("exit 1 where the program fails: here, its output is taken away", () => {
+    const script = "set -o pipefail; npm run --silent assess | head -c 1 > /dev/null";
+    expect(spawnSync("bash", ["-c", script], { input: JSON.stringify(demo), encoding: "utf8" }).status).toBe(1);
+  });
   test("exit 2 where it is no JSON", () => {
     const { status, stderr } = run("{");
     expect(status).toBe(2);
