@@ -27,9 +27,13 @@ export function transformHtml(
     }
     return mode;
   };
-  /** From here on Node writes the head itself, with the headers as they stand. */
+  /**
+   * From here on Node writes the head itself, with the headers as they stand. Through `writeHead` and not in its place:
+   * whoever wrapped it meanwhile (compression, which holds "drain" back until the head goes out) must hear of it.
+   */
+  let released = false;
   const release = () => {
-    response.writeHead = original.writeHead;
+    released = true;
   };
   const passes = () => {
     const passing = decide() === "pass";
@@ -41,6 +45,7 @@ export function transformHtml(
 
   // Headers given with the status are kept on the response, so that they can still change.
   response.writeHead = ((status: number, ...rest: unknown[]) => {
+    if (released) return (original.writeHead as (...all: unknown[]) => ServerResponse)(status, ...rest);
     const headers = rest.find((each) => typeof each === "object" && each !== null) as Record<string, string> | undefined;
     response.statusCode = status;
     for (const [name, value] of Object.entries(headers ?? {})) response.setHeader(name, value);

@@ -73,3 +73,21 @@ test("HTML is compressed for those who take it, with a weak tag", async () => {
   expect(answer.headers["vary"]).toContain("Accept-Encoding");
   expect(brotliDecompressSync(answer.body).toString()).toBe(`<p>${"new ".repeat(500)}</p>`);
 });
+
+test("whoever wraps the head afterwards hears of it before a streamed body goes on", async () => {
+  let heard = 0;
+  const url = await serve((_, response) => {
+    // What compression does: it waits for the head before it lets anybody wait for "drain".
+    const inner = response.writeHead.bind(response) as (...all: unknown[]) => ServerResponse;
+    response.writeHead = ((...all: unknown[]) => {
+      heard++;
+      return inner(...all);
+    }) as ServerResponse["writeHead"];
+    response.setHeader("Content-Type", "application/x-ndjson");
+    response.flushHeaders();
+    response.write("first\n");
+    response.end("last\n");
+  });
+  expect(await (await read(url)).text()).toBe("first\nlast\n");
+  expect(heard).toBe(1);
+});
