@@ -66,7 +66,9 @@ export function thresholdLadder({ none, packages }: LadderInput, size: LadderSiz
   const groups = packages.length === 0 ? [[]] : chunks(packages, size.perPanel);
   return groups.map((group) => {
     // On a phone the last package may have the width to itself; beside each other all columns are alike.
-    const columnPx = (right - LEFT - size.noneWidthPx) / (size.perPanel > 2 ? size.perPanel : Math.max(1, group.length));
+    const alone = size.perPanel <= 2 && group.length < size.perPanel;
+    const noneWidthPx = alone ? size.noneWidthPx * 2 : size.noneWidthPx;
+    const columnPx = (right - LEFT - noneWidthPx) / (alone ? Math.max(1, group.length) : size.perPanel);
     const line = px(scale(1));
     const noneX = LEFT + Math.min(30, size.noneWidthPx / 2);
     const roomy = size.noneWidthPx >= 72;
@@ -88,7 +90,7 @@ export function thresholdLadder({ none, packages }: LadderInput, size: LadderSiz
         whisker: whiskerAt(none, noneX, scale),
         label: roomy ? { x: LEFT + 8, y: px(scale(highest(none)) - 22) } : null,
       },
-      columns: group.map((each, index) => column(each, LEFT + size.noneWidthPx + index * columnPx, columnPx, none.mid, scale, bottom)),
+      columns: group.map((each, index) => column(each, LEFT + noneWidthPx + index * columnPx, columnPx, none.mid, scale, bottom)),
     };
   });
 }
