@@ -4,7 +4,7 @@ import { useEffect, useRef } from "react";
 
 /**
  * What stands in the way, in one list at the top of the form: form errors as sentences, field errors as links to the
- * field. Takes focus when it appears after a submission.
+ * field. Takes focus when it appears after a submission. Every form has one, and it also keeps what was typed.
  */
 export function ErrorSummary<S extends Record<string, unknown>>({
   form,
@@ -22,6 +22,13 @@ export function ErrorSummary<S extends Record<string, unknown>>({
   useEffect(() => {
     if (shown) box.current?.focus();
   }, [shown]);
+  useEffect(() => {
+    // React empties a form after its action, before the answer is known: a refused form would lose what was typed.
+    const keep = (event: Event) => event.preventDefault();
+    const element = document.getElementById(form.id);
+    element?.addEventListener("reset", keep);
+    return () => element?.removeEventListener("reset", keep);
+  }, [form.id]);
   if (!shown) return null;
   return (
     <div ref={box} tabIndex={-1} role="alert" className="note bad my-4">

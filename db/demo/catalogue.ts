@@ -1,7 +1,7 @@
 import type { StaffCtx } from "../../lib/context";
 import type { MeasureInput, Quantity } from "../../lib/engine/types";
 import type { Locale } from "../../lib/i18n/locales";
-import { createMeasure } from "../../lib/measures/save-measure";
+import { createMeasure } from "../../lib/measures/create-measure";
 import kelmaren from "./kelmaren.json";
 import { RESIDENT_WORDS } from "./resident-words";
 

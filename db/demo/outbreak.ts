@@ -16,6 +16,11 @@ const three = (value: Quantity, source: string, times = 1) => {
   return { low: figure(low), central: figure(central), high: figure(high), source };
 };
 
+const percent = (value: Quantity) => {
+  const figure = (x: number) => Number((x * 100).toPrecision(15));
+  return typeof value === "number" ? { central: figure(value) } : { low: figure(value.low), central: figure(value.central), high: figure(value.high) };
+};
+
 /** The invented outbreak with its profile and packages A, B and C. */
 export async function seedOutbreak(ctx: StaffCtx, measureIds: ReadonlyMap<string, string>): Promise<{ outbreakId: string }> {
   const { outbreak } = demo;
@@ -56,10 +61,11 @@ export async function seedOutbreak(ctx: StaffCtx, measureIds: ReadonlyMap<string
       id: made.id,
       version: 1,
       name: each.name,
+      dayZero: outbreak.dayZero,
       lines: each.items.map(({ measure, uptake, startDay, endDay }) => ({
         measureId: measureIds.get(measure) ?? "",
         included: true,
-        uptakePercent: Number((Number(uptake ?? 1) * 100).toPrecision(12)),
+        uptakePercent: percent(uptake ?? 1),
         from: dateOf(outbreak.dayZero, startDay),
         until: endDay === null ? "" : dateOf(outbreak.dayZero, endDay - 1),
         never: endDay === null,

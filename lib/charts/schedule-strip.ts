@@ -2,17 +2,20 @@ import { scaleLinear } from "d3-scale";
 
 export type StripItem = { key: string; name: string; startDay: number; endDay: number | null; leadTimeDays: number; maxDays: number | null };
 export type StripRow = { key: string; name: string; y: number; bar: { x: number; width: number; open: boolean }; lead: { x: number; width: number } | null; law: { x: number; width: number; stop: boolean } | null };
-export type StripModel = { width: number; height: number; rows: StripRow[]; months: { x: number; iso: string }[]; x: (day: number) => number };
+export type StripModel = { height: number; rows: StripRow[]; months: { x: number; iso: string }[]; x: (day: number) => number };
 
+/** So that a single day can be seen. */
+const WIDTH_MIN = 0.3;
 const ROW = 36;
 const HEAD = 26;
 const DAY_MS = 86_400_000;
 
-/** Geometry of a schedule: days from day 0 along x, one row per item. Pixels. */
-export function scheduleStrip(items: readonly StripItem[], dayZero: string, width: number): StripModel {
+/** Geometry of a schedule: days from day 0 along x in per cent of the width, one row per item along y in pixels. */
+export function scheduleStrip(items: readonly StripItem[], dayZero: string): StripModel {
   const ends = items.flatMap(({ startDay, endDay, maxDays }) => [endDay ?? startDay + 180, maxDays ? Math.min(startDay + maxDays, (endDay ?? startDay) + 60) : 0]);
   const last = Math.max(90, ...ends) * 1.04;
-  const x = scaleLinear([0, last], [0, width]);
+  const scale = scaleLinear([0, last], [0, 100]);
+  const x = (day: number) => Number(scale(day).toFixed(3));
   const rows = items.map(({ key, name, startDay, endDay, leadTimeDays, maxDays }, index): StripRow => {
     const to = endDay ?? last;
     const lawful = maxDays === null ? null : startDay + maxDays;
@@ -20,12 +23,12 @@ export function scheduleStrip(items: readonly StripItem[], dayZero: string, widt
       key,
       name,
       y: HEAD + index * ROW,
-      bar: { x: x(startDay), width: Math.max(2, x(to) - x(startDay)), open: endDay === null },
+      bar: { x: x(startDay), width: Math.max(WIDTH_MIN, x(to) - x(startDay)), open: endDay === null },
       lead: leadTimeDays > 0 ? { x: Math.max(0, x(startDay - leadTimeDays)), width: x(startDay) - Math.max(0, x(startDay - leadTimeDays)) } : null,
       law: lawful !== null && lawful > to ? { x: x(to), width: x(Math.min(lawful, last)) - x(to), stop: lawful <= last } : null,
     };
   });
-  return { width, height: HEAD + items.length * ROW + 1, rows, months: monthsBetween(dayZero, last).map(({ day, iso }) => ({ x: x(day), iso })), x };
+  return { height: HEAD + items.length * ROW + 1, rows, months: monthsBetween(dayZero, last).map(({ day, iso }) => ({ x: x(day), iso })), x };
 }
 
 /** First days of months from day 0 on. */

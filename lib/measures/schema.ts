@@ -20,10 +20,23 @@ export const COST_KINDS = ["setUp", "perDay", "perResidentDay"] as const;
 const PAYER_WORDS = { public: "Public purse", business: "Businesses", household: "Households" } as const;
 const COST_WORDS = { setUp: "set-up", perDay: "per day", perResidentDay: "per resident and day" } as const;
 
-const cost = (payer: Payer) =>
-  z
-    .object(Object.fromEntries(COST_KINDS.map((kind) => [kind, optionalQuantityIn({ label: `${PAYER_WORDS[payer]}, ${COST_WORDS[kind]}`, min: 0, max: LIMITS.costMax })])) as Record<(typeof COST_KINDS)[number], ReturnType<typeof optionalQuantityIn>>)
-    .optional();
+type CostKind = (typeof COST_KINDS)[number];
+const costsOf = (transfer: boolean) => {
+  const line = (payer: Payer) => {
+    const label = (kind: CostKind) => `${PAYER_WORDS[payer]}, ${transfer ? "passed on, " : ""}${COST_WORDS[kind]}`;
+    const shape = Object.fromEntries(COST_KINDS.map((kind) => [kind, optionalQuantityIn({ label: label(kind), min: 0, max: LIMITS.costMax })]));
+    return z.object(shape as Record<CostKind, ReturnType<typeof optionalQuantityIn>>).optional();
+  };
+  return z
+    .object(Object.fromEntries(PAYERS.map((payer) => [payer, line(payer)])) as Record<Payer, ReturnType<typeof line>>)
+    .optional()
+    .transform((record) =>
+      PAYERS.flatMap((payer): MeasureCostInput[] => {
+        const filled = COST_KINDS.flatMap((kind) => (record?.[payer]?.[kind] === undefined ? [] : [[kind, record[payer][kind]] as const]));
+        return filled.length ? [{ payer, ...Object.fromEntries(filled), ...(transfer ? { transfer: true } : {}) }] : [];
+      }),
+    );
+};
 
 const facts = {
   code: z
@@ -43,25 +56,19 @@ const facts = {
   daysUsed: optionalDays("Days already used", 0),
   reviewEveryDays: optionalDays("Review every"),
   leadTimeDays: z.preprocess((raw) => (raw === "" || raw === undefined ? 0 : raw), numberIn({ ...days("Lead time"), min: 0, max: 365 })),
-  costs: z
-    .object(Object.fromEntries(PAYERS.map((payer) => [payer, cost(payer)])) as Record<Payer, ReturnType<typeof cost>>)
-    .optional()
-    .transform((record) => PAYERS.flatMap((payer) => costLine(payer, record?.[payer]))),
+  costs: costsOf(false),
+  /** Paid on by one payer to another: shown, never in the total. */
+  transfers: costsOf(true),
   publicTexts: z
     .partialRecord(z.enum(LOCALE_CODES), z.object({ title: words("Words for residents, title", 160).optional(), detail: words("Words for residents, detail", 300).optional() }))
+    .superRefine((record, context) => {
+      for (const [locale, value] of Object.entries(record)) {
+        if (!value?.title && value?.detail) context.addIssue({ code: "custom", path: [locale, "title"], message: "Words for residents, title is missing where there is a detail. Give 1 to 160 characters." });
+      }
+    })
     .optional()
     .transform((record) => Object.fromEntries(Object.entries(record ?? {}).flatMap(([locale, value]) => (value?.title ? [[locale, { title: value.title, detail: value.detail ?? "" }]] : [])))),
 };
-
-function costLine(payer: Payer, line: { [K in (typeof COST_KINDS)[number]]?: { low: number; central: number; high: number } | undefined } | undefined): MeasureCostInput[] {
-  const filled = COST_KINDS.flatMap((kind) => {
-    const value = line?.[kind];
-    if (!value) return [];
-    const certain = value.low === value.central && value.central === value.high;
-    return [[kind, certain ? value.central : { low: value.low, central: value.central, high: value.high }] as const];
-  });
-  return filled.length ? [{ payer, ...Object.fromEntries(filled) }] : [];
-}
 
 const windowNeedsLimit = {
   check: ({ maxDays, maxDaysWithin }: { maxDays: number | null; maxDaysWithin: number | null }) => maxDaysWithin === null || (maxDays !== null && maxDaysWithin >= maxDays),

@@ -47,8 +47,29 @@ export function quantityIn(range: Range) {
     .transform(({ source, ...figures }) => ({ ...figures, ...(source ? { source } : {}) }));
 }
 
-/** A quantity that may be left out altogether; half of one is refused. */
+const BLANK: readonly unknown[] = [undefined, null, ""];
+type Typed = { low?: unknown; central?: unknown; high?: unknown };
+
+/** Central alone, taken as certain (a number), or all three figures; one end without the other is refused. */
+export function plainOrQuantityIn(range: Range) {
+  const [plain, three] = [numberIn(range, "central"), quantityIn(range)];
+  return z.unknown().transform((raw, context): number | { low: number; central: number; high: number } => {
+    const typed = (typeof raw === "object" && raw !== null ? raw : {}) as Typed;
+    const alone = BLANK.includes(typed.low) && BLANK.includes(typed.high);
+    const parsed = alone ? plain.safeParse(typed.central) : three.safeParse(typed);
+    if (!parsed.success) {
+      for (const issue of parsed.error.issues) context.addIssue({ code: "custom", path: alone ? ["central"] : issue.path, message: issue.message });
+      return z.NEVER;
+    }
+    if (typeof parsed.data === "number") return parsed.data;
+    const { low, central, high } = parsed.data;
+    return low === central && central === high ? central : { low, central, high };
+  });
+}
+
+/** Like `plainOrQuantityIn`, for what may be left out altogether. */
 export function optionalQuantityIn(range: Range) {
-  const filled = (raw: unknown) => typeof raw === "object" && raw !== null && ["low", "central", "high"].some((part) => ![undefined, null, ""].includes((raw as Record<string, never>)[part]));
-  return z.preprocess((raw) => (filled(raw) ? raw : undefined), quantityIn(range).optional());
+  const filled = (raw: unknown) => typeof raw === "object" && raw !== null && [(raw as Typed).low, (raw as Typed).central, (raw as Typed).high].some((part) => !BLANK.includes(part));
+  const figures = plainOrQuantityIn(range);
+  return z.preprocess((raw) => (filled(raw) ? raw : undefined), figures.optional());
 }

@@ -7,7 +7,10 @@ import { inTransaction, type StaffCtx } from "@/lib/context";
 import { DomainError } from "@/lib/errors";
 import { CreatePackageInput, LETTERS } from "./schema";
 
-/** A new package under the first free letter, empty or as a copy. @throws DomainError "notReady" where all eight letters are taken */
+/**
+ * A new package under the first free letter, empty or as a copy of one of the same outbreak.
+ * @throws DomainError "notFound"; "notReady" where all eight letters are taken
+ */
 export async function createPackage(ctx: StaffCtx, raw: z.input<typeof CreatePackageInput>): Promise<{ id: string; letter: string }> {
   requirePermission(ctx.actor, "package:write");
   const { outbreakId, name, copyOf } = CreatePackageInput.parse(raw);
@@ -18,10 +21,11 @@ export async function createPackage(ctx: StaffCtx, raw: z.input<typeof CreatePac
     const held = await tx.select({ id: packages.id, letter: packages.letter, items: packages.items }).from(packages).where(eq(packages.outbreakId, outbreakId));
     const letter = LETTERS.find((each) => held.every((row) => row.letter !== each));
     if (!letter) throw new DomainError("notReady", { reasons: ["eightPackages"] });
-    const items = copyOf ? (held.find(({ id }) => id === copyOf)?.items ?? []) : [];
-    const [row] = await tx.insert(packages).values({ outbreakId, letter, name, items, createdBy: ctx.actor.id }).returning({ id: packages.id, letter: packages.letter });
+    const original = held.find(({ id }) => id === copyOf);
+    if (copyOf && !original) throw new DomainError("notFound", { packageId: copyOf });
+    const [row] = await tx.insert(packages).values({ outbreakId, letter, name, items: original?.items ?? [], createdBy: ctx.actor.id }).returning({ id: packages.id, letter: packages.letter });
     if (!row) throw new Error("no package was written");
-    await audit(tx, ctx, { action: "package.create", subject: `package/${row.id}`, facts: { letter } });
+    await audit(tx, ctx, { action: "package.create", subject: `package/${row.id}`, facts: { letter, ...(original ? { copyOf: original.letter } : {}) } });
     return row;
   });
 }

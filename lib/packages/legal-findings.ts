@@ -26,11 +26,19 @@ export function legalFindings(items: readonly ScheduledItem[], laws: readonly Me
     if (law.maxDays === null || own.length === 0) return [];
     const common = { measureCode: law.code, allowedDays: law.maxDays, withinDays: law.maxDaysWithin };
     if (own.some(({ endDay }) => endDay === null)) return [{ ...common, kind: "noEnd", days: null }];
-    const spans: Span[] = own.map(({ startDay, endDay }) => ({ from: startDay, to: endDay ?? startDay }));
-    if (law.daysUsed) spans.unshift({ from: -law.daysUsed, to: 0 });
-    const days = mostDays(spans, law.maxDaysWithin);
+    const days = daysThatCount(own, law);
     return days > law.maxDays ? [{ ...common, kind: "tooLong", days }] : [];
   });
+}
+
+/**
+ * Days of one measure that count against its longest lawful duration: the most in any of its windows, or all of them.
+ * @param own the measure's items, each with an end
+ */
+export function daysThatCount(own: readonly ScheduledItem[], { daysUsed, maxDaysWithin }: Pick<MeasureLaw, "daysUsed" | "maxDaysWithin">): number {
+  const spans: Span[] = own.map(({ startDay, endDay }) => ({ from: startDay, to: endDay ?? Number.POSITIVE_INFINITY }));
+  if (daysUsed) spans.unshift({ from: -daysUsed, to: 0 });
+  return mostDays(spans, maxDaysWithin);
 }
 
 /** Most days in force in any window of the given length; a window that holds most starts or ends with a span. */

@@ -47,7 +47,7 @@ export function staffAction<S extends z.ZodType>(
       return submission.reply({
         formErrors: [
           t(`codes.${error.code}`),
-          ...reasons.map((reason) => (has(reason) ? t(`reasons.${reason}` as never) : reason)),
+          ...reasons.map((reason) => (has(reason) ? t(`reasons.${reason}` as never, error.detail as never) : reason)),
         ],
       });
     }

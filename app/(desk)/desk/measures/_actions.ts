@@ -1,8 +1,10 @@
 "use server";
 import { revalidatePath } from "next/cache";
 import { redirect } from "next/navigation";
-import { archiveMeasure, createMeasure, updateMeasure } from "@/lib/measures/save-measure";
+import { archiveMeasure } from "@/lib/measures/archive-measure";
+import { createMeasure } from "@/lib/measures/create-measure";
 import { ArchiveMeasureInput, CreateMeasureInput, UpdateMeasureInput } from "@/lib/measures/schema";
+import { updateMeasure } from "@/lib/measures/update-measure";
 import { staffAction } from "../../_lib/staff-action";
 import { typedMeasure } from "./_typed-measure";
 

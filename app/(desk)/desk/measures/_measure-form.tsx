@@ -15,6 +15,8 @@ const PAYERS = ["public", "business", "household"] as const;
 const COST_KINDS = ["setUp", "perDay", "perResidentDay"] as const;
 const LAW_DAYS = ["maxDays", "maxDaysWithin", "daysUsed", "reviewEveryDays", "leadTimeDays"] as const;
 
+type CostLines = Record<(typeof PAYERS)[number], Partial<Record<(typeof COST_KINDS)[number], Quantity>>>;
+
 export type MeasureFacts = {
   id?: string;
   version?: number;
@@ -32,7 +34,9 @@ export type MeasureFacts = {
   daysUsed: string;
   reviewEveryDays: string;
   leadTimeDays: string;
-  costs: Record<(typeof PAYERS)[number], Partial<Record<(typeof COST_KINDS)[number], Quantity>>>;
+  costs: CostLines;
+  /** Paid on by one payer to another. */
+  transfers: CostLines;
   publicTexts: Partial<Record<Locale, { title: string; detail: string }>>;
 };
 
@@ -43,12 +47,12 @@ export function MeasureForm({ facts, readOnly = false }: { facts: MeasureFacts; 
   const [lastResult, action] = useActionState(facts.id ? updateMeasureAction : createMeasureAction, undefined);
   const [form, fields] = useForm<MeasureFacts, string[]>({ id: "measure", lastResult: lastResult ?? null, defaultValue: facts });
   const costs = fields.costs.getFieldset();
+  const transfers = fields.transfers.getFieldset();
   const texts = fields.publicTexts.getFieldset() as unknown as Record<Locale, FieldMetadata<{ title: string; detail: string }>>;
-  const names = { code: t("code"), name: t("name"), shortName: t("shortName"), instruction: t("instruction"), cutPercent: t("cutPercent") };
   return (
     <form {...getFormProps(form)} action={action}>
       <fieldset disabled={readOnly} className="min-w-0">
-        <ErrorSummary form={form} title={forms("summary")} names={names} />
+        <ErrorSummary form={form} title={forms("summary")} names={{}} />
         {facts.id ? <input type="hidden" name="id" value={facts.id} /> : null}
         {facts.version ? <input type="hidden" name="version" value={facts.version} /> : null}
         <Section title={t("what")} note={t("whatNote")}>
@@ -74,17 +78,9 @@ export function MeasureForm({ facts, readOnly = false }: { facts: MeasureFacts; 
           </div>
         </Section>
         <Section title={t("price")} note={t("priceNote")}>
-          {PAYERS.map((payer) => {
-            const lines = costs[payer].getFieldset();
-            return (
-              <details key={payer} open={COST_KINDS.some((kind) => facts.costs[payer]?.[kind])} className="border-b border-hair">
-                <summary className="flex min-h-11 cursor-pointer items-center font-semibold">{t(`payers.${payer}`)}</summary>
-                {COST_KINDS.map((kind) => (
-                  <QuantityFields key={kind} meta={lines[kind] as unknown as FieldMetadata<unknown>} label={t(`costs.${kind}`)} unit={t(`costUnit.${kind}`)} source={false} />
-                ))}
-              </details>
-            );
-          })}
+          {PAYERS.map((payer) => (
+            <PayerCosts key={payer} name={t(`payers.${payer}`)} costs={costs[payer]} transfers={transfers[payer]} filled={isFilled(facts.costs[payer])} passedOn={isFilled(facts.transfers[payer])} />
+          ))}
         </Section>
         <Section title={t("residents")} note={t("residentsNote")}>
           <div className="grid gap-x-6 gap-y-4 md:grid-cols-2">
@@ -108,17 +104,51 @@ export function MeasureForm({ facts, readOnly = false }: { facts: MeasureFacts; 
   );
 }
 
-export function ArchiveForm({ id }: { id: string }) {
+const isFilled = (line: Partial<Record<(typeof COST_KINDS)[number], Quantity>>) => COST_KINDS.some((kind) => line[kind]);
+
+type LineMeta = FieldMetadata<Partial<Record<(typeof COST_KINDS)[number], Quantity>>>;
+type PayerProps = { name: string; costs: LineMeta; transfers: LineMeta; filled: boolean; passedOn: boolean };
+
+/** What one payer bears, and beneath it what that payer only passes on. Open where something stands in it or is wrong. */
+function PayerCosts({ name, costs, transfers, filled, passedOn }: PayerProps) {
   const t = useTranslations("Measures");
-  const [, action] = useActionState(archiveMeasureAction, undefined);
+  const wrong = (line: LineMeta) => Object.keys(line.allErrors).length > 0;
+  const passed = passedOn || wrong(transfers);
+  return (
+    <details open={filled || passed || wrong(costs)} className="border-b border-hair">
+      <summary className="flex min-h-11 cursor-pointer items-center font-semibold">{name}</summary>
+      <CostFields meta={costs} />
+      <details open={passed} className="ps-4">
+        <summary className="flex min-h-11 cursor-pointer items-center text-13">{t("passedOn")}</summary>
+        <CostFields meta={transfers} />
+      </details>
+    </details>
+  );
+}
+
+function CostFields({ meta }: { meta: LineMeta }) {
+  const t = useTranslations("Measures");
+  const lines = meta.getFieldset();
+  return COST_KINDS.map((kind) => <QuantityFields key={kind} meta={lines[kind] as unknown as FieldMetadata<unknown>} label={t(`costs.${kind}`)} unit={t(`costUnit.${kind}`)} source={false} />);
+}
+
+/** Takes a measure out of the catalogue, or puts it back in. */
+export function ArchiveForm({ id, archived }: { id: string; archived: boolean }) {
+  const t = useTranslations("Measures");
+  const [lastResult, action] = useActionState(archiveMeasureAction, undefined);
   return (
     <form action={action} className="mt-6 grid justify-items-start gap-1">
       <input type="hidden" name="id" value={id} />
-      <input type="hidden" name="archived" value="yes" />
-      <SubmitButton look="quiet" busy={t("archiving")}>
-        {t("archive")}
+      <input type="hidden" name="archived" value={archived ? "no" : "yes"} />
+      <SubmitButton look={archived ? "secondary" : "quiet"} busy={archived ? t("restoring") : t("archiving")}>
+        {archived ? t("restore") : t("archive")}
       </SubmitButton>
       <p className="hint">{t("archiveNote")}</p>
+      {lastResult?.status === "error" ? (
+        <p role="alert" className="ferr">
+          {lastResult.error?.[""]?.join(" ")}
+        </p>
+      ) : null}
     </form>
   );
 }

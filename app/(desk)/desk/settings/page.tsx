@@ -84,7 +84,7 @@ export default async function SettingsPage() {
             </div>
           </Section>
           <Section title={t("invite")} note={t("inviteNote")}>
-            <InviteForm />
+            <InviteForm key={people.length} />
           </Section>
         </>
       ) : null}

@@ -27,8 +27,13 @@ export default async function MeasurePage({ params, searchParams }: Props) {
           <Note tone="ok">{t("saved")}</Note>
         </div>
       ) : null}
+      {measure.archived ? (
+        <div className="mt-4">
+          <Note tone="look">{t("archivedNote")}</Note>
+        </div>
+      ) : null}
       <MeasureForm key={measure.version} facts={measureFacts(measure)} readOnly={readOnly} />
-      {readOnly || measure.archived ? null : <ArchiveForm id={measure.id} />}
+      {readOnly ? null : <ArchiveForm id={measure.id} archived={measure.archived} />}
     </main>
   );
 }

@@ -1,30 +1,37 @@
-import { getFormatter, getTranslations } from "next-intl/server";
+"use client";
+import { useLocale, useTranslations } from "next-intl";
+import { useEffect, useState } from "react";
 import { ScheduleStripChart } from "@/components/charts/schedule-strip-chart";
-import { listMeasuresById } from "@/lib/measures/queries";
+import { formatShortDay } from "@/lib/figures/format";
+import { type Locale, numberLocale } from "@/lib/i18n/locales";
 import { dateOf } from "@/lib/packages/days";
-import type { Package } from "@/lib/packages/queries";
 
-/** The schedule of one package, drawn on the server. */
-export async function PackageStrip({ row, dayZero }: { row: Package; dayZero: string }) {
-  const [t, format, measures] = await Promise.all([getTranslations("Packages"), getFormatter(), listMeasuresById(row.items.map(({ measureId }) => measureId))]);
-  if (row.items.length === 0) return <p className="mut">{t("nothing")}</p>;
-  const items = row.items.map(({ measureId, startDay, endDay }, index) => {
-    const measure = measures.find(({ id }) => id === measureId);
-    return { key: `${measureId}-${index}`, name: measure?.name ?? "?", startDay, endDay, leadTimeDays: measure?.leadTimeDays ?? 0, maxDays: measure?.maxDays ?? null };
-  });
-  const day = (iso: string, options: Intl.DateTimeFormatOptions) => format.dateTime(new Date(`${iso}T00:00:00Z`), options as never);
+export type StripLine = { key: string; index: number; name: string; startDay: number; endDay: number | null; leadTimeDays: number; maxDays: number | null };
+
+/** A package's schedule. Where it may be moved and script runs, arrow keys move a bar. */
+export function PackageStrip({ lines, dayZero, letter, onMove }: { lines: StripLine[]; dayZero: string; letter: string; onMove?: (line: StripLine, days: number) => void }) {
+  const t = useTranslations("Packages");
+  const locale = useLocale() as Locale;
+  const [alive, setAlive] = useState(false);
+  useEffect(() => setAlive(true), []);
+  if (lines.length === 0) return <p className="mut">{t("nothing")}</p>;
+  const shortDay = (day: number) => formatShortDay(dateOf(dayZero, day), numberLocale(locale));
+  const month = new Intl.DateTimeFormat(numberLocale(locale), { month: "short", timeZone: "UTC" });
+  const movable = onMove !== undefined && alive;
   return (
     <figure>
       <ScheduleStripChart
-        items={items}
+        items={lines}
         dayZero={dayZero}
-        letter={row.letter}
-        title={t("strip", { letter: row.letter })}
+        letter={letter}
+        title={t("strip", { letter })}
         description={t("stripDesc")}
-        monthOf={(iso) => day(iso, { month: "short" })}
-        dateOfDay={(n) => day(dateOf(dayZero, n), { day: "numeric", month: "short" })}
+        monthOf={(iso) => month.format(new Date(`${iso}T00:00:00Z`))}
+        dateOfDay={shortDay}
+        spanOf={({ startDay, endDay }) => (endDay === null ? t("spanOpen", { from: shortDay(startDay) }) : t("span", { from: shortDay(startDay), to: shortDay(endDay - 1) }))}
+        {...(movable ? { onMove: (index: number, days: number) => onMove(lines[index] as StripLine, days) } : {})}
       />
-      <p className="how">{t("stripKey")}</p>
+      <p className="how">{movable ? t("stripKeyMove") : t("stripKey")}</p>
     </figure>
   );
 }

@@ -10,7 +10,7 @@ import { ButtonLink } from "@/components/ui/button";
 import { PackageTile } from "@/components/ui/marks";
 import { can } from "@/lib/auth/permissions";
 import { env } from "@/lib/env";
-import { listMeasures } from "@/lib/measures/queries";
+import { listMeasures, listMeasuresById } from "@/lib/measures/queries";
 import { getOutbreak } from "@/lib/outbreaks/queries";
 import { listPackages } from "@/lib/packages/queries";
 import { PackageStrip } from "./_package-strip";
@@ -23,6 +23,7 @@ export default async function PackagesPage({ params }: { params: Promise<{ outbr
   const { outbreakId } = await params;
   const outbreak = await getOutbreak(outbreakId).catch(() => notFound());
   const [t, rows, measures] = await Promise.all([getTranslations("Packages"), listPackages(outbreakId), listMeasures()]);
+  const held = new Map((await listMeasuresById(rows.flatMap(({ items }) => items.map(({ measureId }) => measureId)))).map((measure) => [measure.id, measure]));
   const mayWrite = can(actor.role, "package:write");
   return (
     <>
@@ -56,12 +57,19 @@ export default async function PackagesPage({ params }: { params: Promise<{ outbr
                 </span>
               }
             >
-              <PackageStrip row={row} dayZero={outbreak.dayZero} />
+              <PackageStrip
+                letter={row.letter}
+                dayZero={outbreak.dayZero}
+                lines={row.items.map(({ measureId, startDay, endDay }, index) => {
+                  const { name = "", leadTimeDays = 0, maxDays = null } = held.get(measureId) ?? {};
+                  return { key: `${measureId}-${index}`, index, name, startDay, endDay, leadTimeDays, maxDays };
+                })}
+              />
             </Section>
           ))
         )}
         {mayWrite && rows.length < 8 ? (
-          <Section title={t("newPackage")}>
+          <Section id="new" title={t("newPackage")}>
             <NewPackageForm outbreakId={outbreakId} />
           </Section>
         ) : null}

@@ -1,29 +1,38 @@
 import type { Metadata } from "next";
 import Link from "next/link";
 import { notFound } from "next/navigation";
-import { getFormatter, getTranslations } from "next-intl/server";
+import { getLocale, getTranslations } from "next-intl/server";
+import { chartWords } from "@/app/(desk)/_lib/assessment-words";
 import { requireStaff } from "@/app/(desk)/_lib/session";
 import { StageLine } from "@/app/(desk)/_lib/stage-line";
-import { Note, PageHead, Section } from "@/components/desk/page-parts";
+import { Note, PageHead } from "@/components/desk/page-parts";
 import { StaffCaution } from "@/components/desk/staff-caution";
 import { ButtonLink } from "@/components/ui/button";
-import { CheckMark, EnoughMark, PackageTile } from "@/components/ui/marks";
+import { PackageTile } from "@/components/ui/marks";
 import { can } from "@/lib/auth/permissions";
 import { central } from "@/lib/engine";
 import { env } from "@/lib/env";
+import { formatShortDay } from "@/lib/figures/format";
+import { type Locale, numberLocale } from "@/lib/i18n/locales";
 import { listMeasures, listMeasuresById, type Measure } from "@/lib/measures/queries";
-import { getOutbreak, type Outbreak } from "@/lib/outbreaks/queries";
-import { readOut } from "@/lib/outbreaks/read-out";
+import { getOutbreak } from "@/lib/outbreaks/queries";
 import { dateOf } from "@/lib/packages/days";
-import { phaseFactors } from "@/lib/packages/phase-factors";
 import { getPackage, listPackages, type Package } from "@/lib/packages/queries";
-import { checkPackage, type PackageFinding } from "@/lib/packages/rules";
-import { CopyPackageForm, DeletePackageForm, type Line, PackageForm } from "../_package-forms";
-import { PackageStrip } from "../_package-strip";
-
-export const metadata: Metadata = { title: "Package" };
+import { checkPackage } from "@/lib/packages/rules";
+import { CopyPackageForm, DeletePackageForm } from "../_package-forms";
+import { type Line, PackageForm } from "../_package-form";
+import { Findings } from "./_findings";
+import { PackageFigures, PackageLadder } from "./_package-figures";
+import { packageResult } from "./_package-result";
+import { PhaseRatios } from "./_phases";
 
 type Props = { params: Promise<{ outbreakId: string; packageId: string }>; searchParams: Promise<{ saved?: string }> };
+
+export async function generateMetadata({ params }: Props): Promise<Metadata> {
+  await requireStaff();
+  const { letter, name } = await getPackage((await params).packageId).catch(() => notFound());
+  return { title: (await getTranslations("Packages"))("packageTitle", { letter, name }) };
+}
 
 export default async function PackagePage({ params, searchParams }: Props) {
   const actor = await requireStaff();
@@ -31,16 +40,19 @@ export default async function PackagePage({ params, searchParams }: Props) {
   const [outbreak, row] = await Promise.all([getOutbreak(outbreakId).catch(() => notFound()), getPackage(packageId).catch(() => notFound())]);
   if (row.outbreakId !== outbreakId) notFound();
   const { saved } = await searchParams;
-  const [t, format, all, catalogue, held] = await Promise.all([
+  const [t, locale, words, all, catalogue, held] = await Promise.all([
     getTranslations("Packages"),
-    getFormatter(),
+    getLocale(),
+    chartWords(),
     listPackages(outbreakId),
     listMeasures(),
     listMeasuresById(row.items.map(({ measureId }) => measureId)),
   ]);
   const mayWrite = can(actor.role, "package:write");
   const measures = [...catalogue, ...held.filter(({ id }) => catalogue.every((each) => each.id !== id))];
-  const findings = checkPackage(row.items, measures);
+  const result = await packageResult(outbreak, row, measures, words);
+  const date = (day: number) => formatShortDay(dateOf(outbreak.dayZero, day), numberLocale(locale as Locale), true);
+  const { dayZero } = outbreak;
   return (
     <>
       <StageLine outbreakId={outbreakId} current="packages" />
@@ -49,143 +61,93 @@ export default async function PackagePage({ params, searchParams }: Props) {
           title={t("packageTitle", { letter: row.letter, name: row.name })}
           actions={
             <>
-              {mayWrite ? <CopyPackageForm outbreakId={outbreakId} id={row.id} letter={row.letter} name={row.name} /> : null}
+              {mayWrite && all.length < 8 ? <CopyPackageForm outbreakId={outbreakId} id={row.id} letter={row.letter} name={row.name} /> : null}
               {can(actor.role, "assessment:write") ? (
                 <ButtonLink look="primary" href={`/desk/assessments/new?outbreak=${outbreakId}`}>
-                  {t("compare")}
+                  {t("compareCount", { count: all.length })}
                 </ButtonLink>
               ) : null}
             </>
           }
         />
-        <nav className="tabs mt-4" aria-label={t("title")}>
+        <nav className="tabs mt-3 overflow-x-auto" aria-label={t("title")}>
           {all.map((each) => (
             <Link key={each.id} href={`/desk/outbreaks/${outbreakId}/packages/${each.id}`} aria-current={each.id === row.id ? "page" : undefined}>
               <PackageTile letter={each.letter} />
               {each.name}
             </Link>
           ))}
+          {mayWrite && all.length < 8 ? (
+            <Link className="!text-tide" href={`/desk/outbreaks/${outbreakId}/packages#new`}>
+              {t("newPackage")}
+            </Link>
+          ) : null}
         </nav>
         {saved ? (
           <div className="mt-4" role="status">
             <Note tone="ok">{t("saved")}</Note>
           </div>
         ) : null}
-        <Section title={t("schedule")} note={t("scheduleNote")}>
-          <PackageStrip row={row} dayZero={outbreak.dayZero} />
-        </Section>
-        <Section title={t("lines")} note={t("linesNote")}>
-          <PackageForm key={row.version} readOnly={!mayWrite} facts={{ id: row.id, version: row.version, name: row.name, lines: linesOf(row, measures, outbreak.dayZero) }} />
-        </Section>
-        <Section title={t("phases")} note={t("phasesNote")}>
-          <Phases outbreak={outbreak} row={row} measures={measures} />
-        </Section>
-        <Section title={t("checks")}>
-          <ul className="chk max-w-[720px]">
-            {findings.map((finding, index) => (
-              <li key={index}>
-                <CheckMark state={finding.level} />
-                <span>{sentence(t, finding)}</span>
-              </li>
-            ))}
-          </ul>
-        </Section>
+        <section className="mt-5" aria-labelledby="schedule">
+          <h2 id="schedule" className="sr-only">
+            {t("schedule")}
+          </h2>
+          <PackageForm
+            key={row.version}
+            readOnly={!mayWrite}
+            facts={{ id: row.id, version: row.version, letter: row.letter, name: row.name, dayZero, lines: linesOf(row, measures, dayZero) }}
+            measures={measures.map(({ id, name, leadTimeDays, maxDays }) => ({ id, name, leadTimeDays, maxDays }))}
+          />
+        </section>
+        <div className="mt-8 grid gap-x-16 gap-y-10 border-t border-hair pt-5 lg:grid-cols-[minmax(0,1fr)_340px]">
+          <div className="grid min-w-0 content-start gap-8">
+            <section className="min-w-0" aria-labelledby="figures">
+              <h2 id="figures" className="!text-[16px] !leading-[23px]">
+                {t("phases")}
+              </h2>
+              {result?.view ? (
+                <div className="mt-2 mb-4">
+                  <PackageFigures view={result.view} />
+                  <p className="how mt-3">{t("figuresNote")}</p>
+                </div>
+              ) : null}
+              {result?.faults ? (
+                <div className="my-4">
+                  <Note tone="bad">
+                    <b>{t("notCalculated")}</b> {result.faults.join(" ")}
+                  </Note>
+                </div>
+              ) : null}
+              <PhaseRatios outbreak={outbreak} row={row} measures={measures} view={result?.view ?? null} />
+              <p className="how">{t("phasesNote")}</p>
+            </section>
+            <section aria-labelledby="checks">
+              <h2 id="checks" className="mb-1 !text-[16px] !leading-[23px]">
+                {t("checks")}
+              </h2>
+              <Findings findings={checkPackage(row.items, measures)} date={date} />
+            </section>
+          </div>
+          {result?.view ? <PackageLadder view={result.view} letter={row.letter} /> : null}
+        </div>
         {mayWrite ? <DeletePackageForm id={row.id} letter={row.letter} /> : null}
         <StaffCaution demonstration={env().demo} />
       </main>
     </>
   );
-
-  async function Phases(props: { outbreak: Outbreak; row: Package; measures: Measure[] }) {
-    const { profile } = props.outbreak;
-    const out =
-      profile &&
-      readOut({
-        population: props.outbreak.populationPersons,
-        infectious: profile.infectious.central,
-        removed: profile.removed.central,
-        exposed: profile.latentPeriodDays ? (profile.exposed?.central ?? null) : 0,
-        given: profile.transmission.given,
-        value: profile.transmission.value.central,
-        infectiousPeriodDays: profile.infectiousPeriodDays.central,
-        latentPeriodDays: profile.latentPeriodDays?.central ?? null,
-      });
-    if (!out) return <p className="mut">{t("noProfile")}</p>;
-    const n = (value: number) => format.number(value, { minimumFractionDigits: 2, maximumFractionDigits: 2 });
-    return (
-      <table className="head max-w-[820px]">
-        <thead>
-          <tr>
-            <th scope="col">{t("phaseFrom")}</th>
-            <th scope="col" className="r">
-              {t("phaseR")}
-            </th>
-            <th scope="col" className="r">
-              {t("phaseB")}
-            </th>
-            <th scope="col">{t("phaseWhat")}</th>
-          </tr>
-        </thead>
-        <tbody>
-          {phaseFactors(props.row.items, props.measures).map(({ fromDay, factor, names }) => {
-            const b = out.thresholdRatio / factor;
-            return (
-              <tr key={fromDay}>
-                <th scope="row">{format.dateTime(new Date(`${dateOf(props.outbreak.dayZero, fromDay)}T00:00:00Z`), { day: "numeric", month: "short", year: "numeric" })}</th>
-                <td className="r">{n(1 / b)}</td>
-                <td className="r">
-                  <b>{n(b)}</b>
-                </td>
-                <td>
-                  <span className="st whitespace-normal">
-                    <EnoughMark state={b >= 1 ? "above" : "below"} />
-                    <span className="sr-only">{b >= 1 ? t("above") : t("below")}</span>
-                    {names.length ? names.join(", ") : t("phaseNone")}
-                  </span>
-                </td>
-              </tr>
-            );
-          })}
-        </tbody>
-      </table>
-    );
-  }
 }
 
-type Translate = Awaited<ReturnType<typeof getTranslations<"Packages">>>;
-
-function sentence(t: Translate, finding: PackageFinding): string {
-  switch (finding.code) {
-    case "ladder":
-      return t("finding.ladder", { measure: finding.measure, other: finding.other });
-    case "overlap":
-      return t("finding.overlap", { measure: finding.measure });
-    case "leadTime":
-      return t("finding.leadTime", { measure: finding.measure, days: finding.days });
-    case "tooLong":
-      return t("finding.tooLong", { measure: finding.measure, days: finding.days, allowed: finding.allowed, within: finding.within ?? 0 });
-    case "noEnd":
-      return t("finding.noEnd", { measure: finding.measure, allowed: finding.allowed });
-    default:
-      return t(`finding.${finding.code}`);
-  }
-}
-
-/** One line per measure of the catalogue, those of the package filled in; a measure that stands twice has two lines. */
+/** The package's own lines first, as they stand; then every other measure of the catalogue, not ticked. */
 function linesOf(row: Package, measures: readonly Measure[], dayZero: string): Line[] {
-  const percent = (value: number) => String(Number((value * 100).toPrecision(12)));
-  return measures.flatMap((measure): Line[] => {
-    const own = row.items.filter(({ measureId }) => measureId === measure.id);
-    const blank = { measureId: measure.id, name: measure.name, included: false, uptakePercent: "100", from: "", until: "", never: false };
-    return own.length === 0
-      ? [blank]
-      : own.map((item) => ({
-          ...blank,
-          included: true,
-          uptakePercent: percent(central(item.uptake)),
-          from: dateOf(dayZero, item.startDay),
-          until: item.endDay === null ? "" : dateOf(dayZero, item.endDay - 1),
-          never: item.endDay === null,
-        }));
-  });
+  const percent = (share: number) => String(Number((share * 100).toPrecision(12)));
+  const own = row.items.map(({ measureId, uptake, startDay, endDay }): Line => ({
+    measureId,
+    included: true,
+    uptakePercent: typeof uptake === "number" ? { low: "", central: percent(uptake), high: "" } : { low: percent(uptake.low), central: percent(central(uptake)), high: percent(uptake.high) },
+    from: dateOf(dayZero, startDay),
+    until: endDay === null ? "" : dateOf(dayZero, endDay - 1),
+    never: endDay === null,
+  }));
+  const others = measures.filter(({ id }) => row.items.every(({ measureId }) => measureId !== id));
+  return [...own, ...others.map(({ id }): Line => ({ measureId: id, included: false, uptakePercent: { low: "", central: "100", high: "" }, from: "", until: "", never: false }))];
 }
