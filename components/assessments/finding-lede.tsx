@@ -48,7 +48,7 @@ function valuesOf(sentence: FindingSentence, shown: Shown, list: (letters: strin
       return { letter: sentence.letter, ...persons(sentence.more) };
     case "costs": {
       const [first, second] = sentence.costs;
-      return { count: sentence.costs.length, letter: first?.letter ?? "", amount: shown.amount(first?.total.mid ?? 0), other: second?.letter ?? "", otherAmount: shown.amount(second?.total.mid ?? 0) };
+      return { count: sentence.costs.length, letter: first?.letter ?? "", amount: shown.amount(first?.total.mid ?? 0), other: second?.letter ?? "", otherAmount: shown.amount(second?.total.mid ?? 0), known: sentence.more === null ? "no" : "yes", more: shown.amount(sentence.more ?? 0) };
     }
   }
 }

@@ -1,8 +1,9 @@
 import { useTranslations } from "next-intl";
-import { PackageTile } from "@/components/ui/marks";
+import { Figure, PackageTile } from "@/components/ui/marks";
+import { shownRange } from "@/lib/assessments/figures-of";
 import type { AssessmentView } from "@/lib/assessments/view";
-import { formatPersons } from "@/lib/figures/format";
-import { isFew, percentShown } from "@/lib/figures/round";
+import type { Interval } from "@/lib/engine/types";
+import { percentShown } from "@/lib/figures/round";
 import { useShown } from "./use-shown";
 
 /** What happens between one change of measures and the next: growth at both ends, who is left, and what a lift leaves behind. */
@@ -15,6 +16,16 @@ export function PhasesTable({ view }: { view: AssessmentView }) {
       .filter(({ startDay, endDay }) => startDay <= day && (endDay === null || endDay > day))
       .map(({ measureCode }) => short.get(measureCode) ?? measureCode);
   const chance = (share: number | null | undefined) => (share === null || share === undefined ? <span className="dim">–</span> : t("phases.chance", percentShown(share)));
+  const effective = (drawn: Interval | undefined, central: number) => {
+    const range = shownRange(drawn, central);
+    return (
+      <>
+        <Figure {...shown.ratioOf(range)} />
+        <small className="mut block">{t("phases.others", { others: shown.ratio(1 / range.mid) })}</small>
+      </>
+    );
+  };
+  const infected = (drawn: Interval | undefined, central: number) => <Figure {...shown.count(shownRange(drawn, central))} />;
   return (
     <section aria-labelledby="phases-title" className="min-w-0">
       <h2 id="phases-title" className="!text-[16px] !leading-[23px]">
@@ -23,16 +34,16 @@ export function PhasesTable({ view }: { view: AssessmentView }) {
       <p className="sm mut mb-2 max-w-[60rem]">{t("phases.description")}</p>
       {/* biome-ignore lint/a11y/noNoninteractiveTabindex: a frame that scrolls must be reachable by keyboard */}
       <div role="region" aria-labelledby="phases-title" tabIndex={0} className="overflow-x-auto">
-        <table className="head min-w-[960px]">
+        <table className="head min-w-[1020px]">
           <thead>
             <tr>
               <th scope="col" className="sticky start-0 z-[1] bg-paper">{t("phases.when")}</th>
               <th scope="col">{t("phases.measures")}</th>
               <th scope="col" className="r">{t("phases.factor")}</th>
-              <th scope="col" className="r">{t("phases.others")}</th>
-              <th scope="col" className="r">{t("phases.effective")}</th>
+              <th scope="col">{t("phases.effectiveStart")}</th>
+              <th scope="col">{t("phases.effectiveEnd")}</th>
               <th scope="col" className="r">{t("phases.shrinks")}</th>
-              <th scope="col" className="r">{t("phases.infected")}</th>
+              <th scope="col">{t("phases.infected")}</th>
               <th scope="col" className="r">{t("phases.endsByItself")}</th>
             </tr>
           </thead>
@@ -56,10 +67,10 @@ export function PhasesTable({ view }: { view: AssessmentView }) {
                     </th>
                     <td className="sm">{names.length === 0 ? <span className="dim">{t("phases.nothing")}</span> : names.join(", ")}</td>
                     <td className="r num">{shown.ratio(phase.factor)}</td>
-                    <td className="r num">{t("phases.arrow", { from: shown.ratio(1 / phase.effectiveRatioAtStart), to: shown.ratio(1 / phase.effectiveRatioAtEnd) })}</td>
-                    <td className="r num">{t("phases.arrow", { from: shown.ratio(phase.effectiveRatioAtStart), to: shown.ratio(phase.effectiveRatioAtEnd) })}</td>
+                    <td className="num">{effective(drawn?.effectiveRatioAtStart, phase.effectiveRatioAtStart)}</td>
+                    <td className="num">{effective(drawn?.effectiveRatioAtEnd, phase.effectiveRatioAtEnd)}</td>
                     <td className="r num">{chance(drawn?.chanceShrinksAtStart)}</td>
-                    <td className="r num">{phase.toDay === null ? <span className="dim">{t("phases.nobody")}</span> : isFew(phase.infectedAtEnd) ? t("few") : formatPersons(phase.infectedAtEnd, shown.tag)}</td>
+                    <td className="num">{phase.toDay === null ? <span className="dim">{t("phases.nobody")}</span> : infected(drawn?.infectedAtEnd, phase.infectedAtEnd)}</td>
                     <td className="r num">{chance(drawn ? drawn.chanceEndsByItself : phase.chanceEndsByItself)}</td>
                   </tr>
                 );

@@ -3,7 +3,8 @@ import type { Range } from "@/lib/charts/axes";
 
 /** Figures as shown: the median of the draws with its interval, or the central run where nothing is drawn. */
 export const ofInterval = ({ median, low, high }: Interval): Range => ({ mid: median, low, high });
-const shown = (interval: Interval | undefined, central: number): Range => (interval ? ofInterval(interval) : { mid: central, low: null, high: null });
+/** The median where something was drawn, otherwise the central run. */
+export const shownRange = (interval: Interval | null | undefined, central: number): Range => (interval ? ofInterval(interval) : { mid: central, low: null, high: null });
 
 /** A range's two ends, or null where it is taken as certain. */
 export const endsOf = ({ low, high }: Range): { low: number; high: number } | null => (low === null || high === null ? null : { low, high });
@@ -11,10 +12,10 @@ export const endsOf = ({ low, high }: Range): { low: number; high: number } | nu
 /** What the comparison shows of no further measures. Day numbers count from day 0. */
 export function withoutFigures({ uncertainty: u, ...without }: Omit<WithoutMeasuresResult, "course">) {
   return {
-    thresholdRatio: shown(u?.thresholdRatio, without.thresholdRatio),
-    reproductionNumber: shown(u?.reproductionNumber, without.reproductionNumber),
-    finalDeaths: shown(u?.finalDeaths, without.finalDeaths),
-    peakDay: shown(u?.peakDay, without.peak.day),
+    thresholdRatio: shownRange(u?.thresholdRatio, without.thresholdRatio),
+    reproductionNumber: shownRange(u?.reproductionNumber, without.reproductionNumber),
+    finalDeaths: shownRange(u?.finalDeaths, without.finalDeaths),
+    peakDay: shownRange(u?.peakDay, without.peak.day),
     chanceShrinks: u?.chanceShrinks ?? null,
     central: { finalDeaths: without.finalDeaths },
   };
@@ -26,23 +27,24 @@ const PAYERS: readonly Payer[] = ["public", "business", "household"];
 /** What the comparison shows of one package. */
 export function packageFigures({ uncertainty: u, ...result }: Omit<PackageResult, "course">) {
   return {
-    thresholdRatio: shown(u?.thresholdRatio, result.thresholdRatio),
+    thresholdRatio: shownRange(u?.thresholdRatio, result.thresholdRatio),
     finalDeaths: {
-      asScheduled: shown(u?.finalDeaths.asScheduled, result.finalDeaths.asScheduled),
-      heldToEnd: shown(u?.finalDeaths.heldToEnd, result.finalDeaths.heldToEnd),
-      heldFromDayZero: shown(u?.finalDeaths.heldFromDayZero, result.finalDeaths.heldFromDayZero),
+      asScheduled: shownRange(u?.finalDeaths.asScheduled, result.finalDeaths.asScheduled),
+      heldToEnd: shownRange(u?.finalDeaths.heldToEnd, result.finalDeaths.heldToEnd),
+      heldFromDayZero: shownRange(u?.finalDeaths.heldFromDayZero, result.finalDeaths.heldFromDayZero),
     },
     deathsAverted: {
-      asScheduled: shown(u?.deathsAverted.asScheduled, result.deathsAverted.asScheduled),
-      heldToEnd: shown(u?.deathsAverted.heldToEnd, result.deathsAverted.heldToEnd),
+      asScheduled: shownRange(u?.deathsAverted.asScheduled, result.deathsAverted.asScheduled),
+      heldToEnd: shownRange(u?.deathsAverted.heldToEnd, result.deathsAverted.heldToEnd),
     },
-    peakDay: shown(u?.peakDay, result.peak.day),
+    peakDay: shownRange(u?.peakDay, result.peak.day),
     cost: {
-      total: shown(u?.cost.total, result.cost.total),
-      byPayer: Object.fromEntries(PAYERS.map((payer) => [payer, shown(u?.cost.byPayer[payer], result.cost.byPayer[payer])])) as Record<Payer, Range>,
+      total: shownRange(u?.cost.total, result.cost.total),
+      byPayer: Object.fromEntries(PAYERS.map((payer) => [payer, shownRange(u?.cost.byPayer[payer], result.cost.byPayer[payer])])) as Record<Payer, Range>,
     },
-    perDeathAverted: u ? (u.perDeathAverted ? ofInterval(u.perDeathAverted) : null) : result.cost.perDeathAverted === null ? null : shown(undefined, result.cost.perDeathAverted),
+    perDeathAverted: u ? (u.perDeathAverted ? ofInterval(u.perDeathAverted) : null) : result.cost.perDeathAverted === null ? null : shownRange(undefined, result.cost.perDeathAverted),
     chanceEnough: u?.chanceEnough ?? null,
+    susceptibleShareAtLift: result.susceptibleShareAtLift === null ? null : shownRange(u?.susceptibleShareAtLift, result.susceptibleShareAtLift),
     central: { finalDeaths: result.finalDeaths.asScheduled, thresholdRatio: result.thresholdRatio },
   };
 }

@@ -16,9 +16,10 @@ export type FindingSentence =
   | { key: "avertsOnly"; letter: string; averted: Range; single: boolean }
   | { key: "noneAverts"; single: boolean }
   | { key: "worse"; letter: string; more: Range }
-  | { key: "costs"; costs: { letter: string; total: Range }[] };
+  /** `more`: what the first costs beyond the second, the median of paired differences. */
+  | { key: "costs"; costs: { letter: string; total: Range }[]; more: number | null };
 
-type Judged = { letter: string; figures: PackageFigures; endDay: number | null; susceptibleShare: number | null };
+type Judged = { letter: string; figures: PackageFigures; endDay: number | null };
 
 /** Paired draws between these shares don't tell two packages apart. */
 const ALIKE: readonly [number, number] = [0.4, 0.6];
@@ -39,7 +40,6 @@ export function finding(result: SlimResult, packages: AssessmentInput["packages"
       letter: each.id,
       figures: packageFigures(each),
       endDay: ends.length === 0 || ends.includes(null) ? null : Math.max(...(ends as number[])),
-      susceptibleShare: each.susceptibleShareAtLift,
     };
   });
   if (judged.length === 0) return [];
@@ -72,16 +72,16 @@ function enoughSentences(result: SlimResult, judged: Judged[]): FindingSentence[
 
 function lifts(enough: Judged[]): FindingSentence[] {
   return enough
-    .filter(({ endDay, susceptibleShare }) => endDay !== null && susceptibleShare !== null)
+    .filter(({ endDay, figures }) => endDay !== null && figures.susceptibleShareAtLift !== null)
     .slice(0, FOLLOWED_MAX)
-    .map(({ letter, figures, endDay, susceptibleShare }) => {
+    .map(({ letter, figures, endDay }) => {
       const averted = figures.deathsAverted.asScheduled;
       const outcome = !isMeasurable(averted.mid, endsOf(averted)) ? "noDifference" : averted.mid > 0 ? "averts" : "worse";
       return {
         key: "afterLift",
         letter,
         endDay: endDay ?? 0,
-        susceptibleShare: susceptibleShare ?? 0,
+        susceptibleShare: figures.susceptibleShareAtLift?.mid ?? 0,
         outcome,
         deaths: outcome === "worse" ? negated(averted) : averted,
       };
@@ -99,7 +99,7 @@ function avertedSentences(result: SlimResult, judged: Judged[]): FindingSentence
   const single = judged.length === 1;
   if (!best) return [...sentences, ...(measurable.length === 0 ? [{ key: "noneAverts" as const, single }] : [])];
   const averted = best.figures.deathsAverted.asScheduled;
-  if (!second) return [{ key: "avertsOnly", letter: best.letter, averted, single }, ...sentences, costs([best])];
+  if (!second) return [{ key: "avertsOnly", letter: best.letter, averted, single }, ...sentences, costs([best], result.comparison)];
 
   const chance = result.comparison.pairs.find(({ a, b }) => a === best.letter && b === second.letter)?.chanceAvertsMore ?? null;
   const alike = chance !== null && chance >= ALIKE[0] && chance <= ALIKE[1];
@@ -108,8 +108,12 @@ function avertedSentences(result: SlimResult, judged: Judged[]): FindingSentence
       ? { key: "avertAlike", letter: best.letter, other: second.letter, averted, otherAverted: second.figures.deathsAverted.asScheduled, chance }
       : { key: "avertsMost", letter: best.letter, averted, over: chance === null ? null : { letter: second.letter, chance } },
     ...sentences,
-    costs([best, second]),
+    costs([best, second], result.comparison),
   ];
 }
 
-const costs = (named: Judged[]): FindingSentence => ({ key: "costs", costs: named.map(({ letter, figures }) => ({ letter, total: figures.cost.total })) });
+function costs(named: Judged[], { incremental }: SlimResult["comparison"]): FindingSentence {
+  const [first, second] = named;
+  const step = incremental.find(({ from, to }) => to === first?.letter && from === second?.letter);
+  return { key: "costs", costs: named.map(({ letter, figures }) => ({ letter, total: figures.cost.total })), more: step?.cost ?? null };
+}

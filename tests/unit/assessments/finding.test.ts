@@ -127,6 +127,13 @@ describe("what averts deaths", () => {
       { key: "costs", costs: [{ letter: "B", total: { mid: 2 } }, { letter: "A", total: { mid: 1 } }] },
     ]);
   });
+  test("a difference of costs is said only where it was drawn in pairs", () => {
+    const result = two(0.79);
+    const costs = (comparison: SlimResult["comparison"]) => finding({ ...result, comparison }, schedule(ends)).at(-1);
+    expect(costs(result.comparison)).toMatchObject({ key: "costs", more: null });
+    expect(costs({ ...result.comparison, incremental: [{ from: "A", to: "B", cost: 14e6, deathsAverted: 40, ratio: 1 }] })).toMatchObject({ more: 14e6 });
+    expect(costs({ ...result.comparison, incremental: [{ from: "none", to: "B", cost: 30e6, deathsAverted: 40, ratio: 1 }] })).toMatchObject({ more: null });
+  });
   test("without draws nothing is said of chances", () => expect(finding(two(null), schedule(ends))[1]).toMatchObject({ key: "avertsMost", over: null }));
   test("two that paired draws don't tell apart avert alike", () => expect(finding(two(0.52), schedule(ends))[1]).toMatchObject({ key: "avertAlike", letter: "B", other: "A", chance: 0.52 }));
   test("one that can't be told from nothing leaves the other alone", () => {
