@@ -28,6 +28,10 @@ const Env = z.object({
   MAIL_DOMAIN: z.string().min(3).default("news.example.org"),
   AUTHORITY_NAME: z.string().min(1).default("Kelmaren District Health Office"),
   AUTHORITY_CONTACT: z.string().min(3).default("ask@example.org"),
+  /** Connections to the mail server at once; twice as many mails can be in doubt after a crash. */
+  MAIL_CONNECTIONS: z.coerce.number().int().min(1).max(50).default(5),
+  /** A mail that was claimed and not finished within this is taken back; more than all time limits of one attempt. */
+  MAIL_LEASE_SECONDS: z.coerce.number().int().min(1).max(3600).default(300),
   /** DKIM selector, domain and PEM file; mail goes out unsigned without them. */
   DKIM_SELECTOR: z.string().optional(),
   DKIM_DOMAIN: z.string().optional(),

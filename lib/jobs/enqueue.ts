@@ -37,5 +37,22 @@ export async function enqueueRelease(tx: Tx, { releaseId, holdMinutes }: { relea
   return Number((rows as unknown as { count: number }).count);
 }
 
+/**
+ * One delivery per subscriber who got a release that is now withdrawn, or may have got it: they had the faulty text in
+ * hand. In the language in which they got it, in the withdrawing transaction, without a hold.
+ * @returns how many
+ */
+export async function enqueueWithdrawal(tx: Tx, { releaseId }: { releaseId: string }): Promise<number> {
+  const rows = await tx.execute(sql`
+    insert into deliveries (kind, release_id, subscription_id, locale)
+    select 'withdrawal', d.release_id, d.subscription_id, d.locale
+    from deliveries d join subscriptions s on s.id = d.subscription_id
+    where d.release_id = ${releaseId} and d.kind = 'briefing' and d.state in ('accepted', 'unknown', 'sending')
+      and s.state = 'active' and s.suppressed_at is null
+    on conflict do nothing`);
+  await hint(tx);
+  return Number((rows as unknown as { count: number }).count);
+}
+
 /** Wakes the worker at commit; it also looks by itself every second. */
 const hint = (tx: Tx) => tx.execute(sql`select pg_notify('ebbmark_outbox', '')`);
