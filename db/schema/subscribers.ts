@@ -35,14 +35,14 @@ export const subscriptions = pgTable(
 );
 
 /**
- * The outbox: one row per mail, written in the transaction that it belongs to. For briefings one row per
- * (release, subscription), which is also the permanent record of what happened.
+ * The outbox: one row per mail, written in the transaction that it belongs to. For releases one row per
+ * (release, subscription, kind), which is also the permanent record of what happened.
  */
 export const deliveries = pgTable(
   "deliveries",
   {
     id: id(),
-    kind: text("kind").$type<"signIn" | "invitation" | "confirmSubscription" | "briefing">().notNull(),
+    kind: text("kind").$type<"signIn" | "invitation" | "confirmSubscription" | "briefing" | "withdrawal">().notNull(),
     releaseId: uuid("release_id").references(() => releases.id),
     subscriptionId: uuid("subscription_id").references(() => subscriptions.id, { onDelete: "set null" }),
     /** Address for mail that isn't a briefing; null for briefings, which read the subscription, and after scrubbing. */
@@ -60,13 +60,17 @@ export const deliveries = pgTable(
     leaseUntil: at("lease_until"),
     /** Set before the connection is opened, so that a resend carries the same one. */
     messageId: text("message_id"),
+    /** Set before the last bytes of the message go out: from here on the server may have taken it. Null: it can't have. */
+    endingAt: at("ending_at"),
+    /** When the outcome of an attempt was lost; stays, so that a mail sent twice can be told from one sent once. */
+    unknownAt: at("unknown_at"),
     /** Last SMTP reply code and enhanced status, never the text (it may hold the address). */
     reply: text("reply"),
     createdAt: createdAt(),
     finishedAt: at("finished_at"),
   },
   (t) => [
-    uniqueIndex("deliveries_once").on(t.releaseId, t.subscriptionId).where(sql`${t.releaseId} is not null`),
+    uniqueIndex("deliveries_once").on(t.releaseId, t.subscriptionId, t.kind).where(sql`${t.releaseId} is not null`),
     index("deliveries_due").on(t.nextAt).where(sql`${t.state} in ('queued','deferred')`),
     index("deliveries_leased").on(t.leaseUntil).where(sql`${t.state} = 'sending'`),
     index("deliveries_release").on(t.releaseId, t.state),
@@ -74,7 +78,7 @@ export const deliveries = pgTable(
       "deliveries_state",
       sql`${t.state} in ('queued','sending','accepted','deferred','rejected','unknown','suppressed')`,
     ),
-    check("deliveries_kind", sql`${t.kind} in ('signIn','invitation','confirmSubscription','briefing')`),
+    check("deliveries_kind", sql`${t.kind} in ('signIn','invitation','confirmSubscription','briefing','withdrawal')`),
   ],
 );
 
