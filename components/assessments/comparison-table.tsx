@@ -1,4 +1,5 @@
 import { useTranslations } from "next-intl";
+import { ScrollFrame } from "@/components/ui/scroll-frame";
 import type { ReactNode } from "react";
 import { Whisker } from "@/components/charts/whisker";
 import { EnoughMark, Figure, PackageTile } from "@/components/ui/marks";
@@ -85,8 +86,7 @@ export function ComparisonTable({ view }: { view: AssessmentView }) {
   const list = (ids: string[]) => new Intl.ListFormat(shown.tag, { type: "conjunction" }).format(ids.map((id) => (id === "none" ? t("table.noMeasures") : id)));
 
   return (
-    // biome-ignore lint/a11y/noNoninteractiveTabindex: a frame that scrolls must be reachable by keyboard
-    <div role="region" aria-label={t("table.caption")} tabIndex={0} className="overflow-x-auto">
+    <ScrollFrame label={t("table.caption")}>
       <table className={`cmp head ${MIN_WIDTH[columns.length] ?? ""}`}>
         <caption className="skip">{t("table.caption")}</caption>
         <thead>
@@ -148,7 +148,7 @@ export function ComparisonTable({ view }: { view: AssessmentView }) {
           />
         </tbody>
       </table>
-    </div>
+    </ScrollFrame>
   );
 }
 

@@ -1,4 +1,5 @@
 import { useTranslations } from "next-intl";
+import { ScrollFrame } from "@/components/ui/scroll-frame";
 import { PackageTile } from "@/components/ui/marks";
 import type { AssessmentView } from "@/lib/assessments/view";
 import { useShown } from "./use-shown";
@@ -15,8 +16,7 @@ export function ContributionsTable({ view }: { view: AssessmentView }) {
         {t("contributions.title")}
       </h2>
       <p className="sm mut mb-2">{t("contributions.description")}</p>
-      {/* biome-ignore lint/a11y/noNoninteractiveTabindex: a frame that scrolls must be reachable by keyboard */}
-      <div role="region" aria-labelledby="contributions-title" tabIndex={0} className="overflow-x-auto">
+      <ScrollFrame labelledBy="contributions-title">
         <table className="head">
           <thead>
             <tr>
@@ -46,7 +46,7 @@ export function ContributionsTable({ view }: { view: AssessmentView }) {
             ))}
           </tbody>
         </table>
-      </div>
+      </ScrollFrame>
       <p className="how">{t("contributions.how")}</p>
     </section>
   );

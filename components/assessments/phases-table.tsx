@@ -1,4 +1,5 @@
 import { useTranslations } from "next-intl";
+import { ScrollFrame } from "@/components/ui/scroll-frame";
 import { Figure, PackageTile } from "@/components/ui/marks";
 import { shownRange } from "@/lib/assessments/figures-of";
 import type { AssessmentView } from "@/lib/assessments/view";
@@ -32,8 +33,7 @@ export function PhasesTable({ view }: { view: AssessmentView }) {
         {t("phases.title")}
       </h2>
       <p className="sm mut mb-2 max-w-[60rem]">{t("phases.description")}</p>
-      {/* biome-ignore lint/a11y/noNoninteractiveTabindex: a frame that scrolls must be reachable by keyboard */}
-      <div role="region" aria-labelledby="phases-title" tabIndex={0} className="overflow-x-auto">
+      <ScrollFrame labelledBy="phases-title">
         <table className="head min-w-[1020px]">
           <thead>
             <tr>
@@ -78,7 +78,7 @@ export function PhasesTable({ view }: { view: AssessmentView }) {
             </tbody>
           ))}
         </table>
-      </div>
+      </ScrollFrame>
       <p className="how">{t("phases.how")}</p>
     </section>
   );

@@ -1,4 +1,5 @@
 import { useTranslations } from "next-intl";
+import { ScrollFrame } from "@/components/ui/scroll-frame";
 import type { ReactNode } from "react";
 
 export type ChartTable = { columns: ReactNode[]; rows: ReactNode[][] };
@@ -16,8 +17,7 @@ export function ChartFrame({ title, description, how, table, children, id }: { t
       {how ? <p className="how max-w-[44rem]">{how}</p> : null}
       <details className="twin mt-2">
         <summary className="sm">{t("showAsTable")}</summary>
-        {/* biome-ignore lint/a11y/noNoninteractiveTabindex: a frame that scrolls must be reachable by keyboard */}
-        <div role="region" aria-labelledby={`${id}-title`} tabIndex={0} className="mt-2 overflow-x-auto">
+        <ScrollFrame labelledBy={`${id}-title`} className="mt-2">
           <table className="head sm">
             <thead>
               <tr>
@@ -46,7 +46,7 @@ export function ChartFrame({ title, description, how, table, children, id }: { t
               ))}
             </tbody>
           </table>
-        </div>
+        </ScrollFrame>
       </details>
     </figure>
   );

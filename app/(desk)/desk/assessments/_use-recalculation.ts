@@ -89,13 +89,6 @@ export function useRecalculation(assessmentId: string, saved: Shown | null) {
       clearTimeout(timer.current);
       timer.current = setTimeout(() => settle(next), DEBOUNCE_MS);
     },
-    discard: () => {
-      clearTimeout(timer.current);
-      setEdited(false);
-      setTyping(false);
-      setBody(null);
-      setLast(saved);
-    },
     cancel: () => {
       clearTimeout(timer.current);
       setCancelled(true);

@@ -28,14 +28,16 @@ export type WorkingProps = {
 /** Works as plain forms without a script; with one, the figures follow what is typed. */
 export function WorkingAssessment(props: WorkingProps) {
   const [client] = useState(() => new QueryClient({ defaultOptions: { queries: { retry: false, refetchOnWindowFocus: false, refetchOnReconnect: false, staleTime: Number.POSITIVE_INFINITY, gcTime: 60_000 } } }));
+  // Discarding starts anew from what is stored: form, messages and figures.
+  const [round, setRound] = useState(0);
   return (
     <QueryClientProvider client={client}>
-      <Editor {...props} />
+      <Editor key={round} {...props} opened={round > 0} onDiscard={() => setRound(round + 1)} />
     </QueryClientProvider>
   );
 }
 
-function Editor({ id, outbreak, saved, defaults, packages, freeze }: WorkingProps) {
+function Editor({ id, outbreak, saved, defaults, packages, freeze, opened, onDiscard }: WorkingProps & { opened: boolean; onDiscard: () => void }) {
   const t = useTranslations("Assessments");
   const formRef = useRef<HTMLFormElement>(null);
   const [scripted, setScripted] = useState(false);
@@ -52,7 +54,7 @@ function Editor({ id, outbreak, saved, defaults, packages, freeze }: WorkingProp
   return (
     <>
       <div className={stale ? "opacity-60" : undefined}>{shown ? <FindingLede finding={shown.view.finding} outbreak={outbreak} /> : null}</div>
-      <details className="sheet mt-5 print:hidden" {...(lastResult?.status === "error" || !saved ? { open: true } : {})}>
+      <details className="sheet mt-5 print:hidden" {...(lastResult?.status === "error" || !saved || opened ? { open: true } : {})}>
         <summary className="cursor-pointer font-semibold">{t("page.edit")}</summary>
         <p className="sm mut mt-1">{scripted ? t("page.editNote") : t("page.editNoScript")}</p>
         <EditPanel
@@ -70,13 +72,7 @@ function Editor({ id, outbreak, saved, defaults, packages, freeze }: WorkingProp
             {saving ? t("page.saving") : t("page.save")}
           </button>
           {live.edited ? (
-            <Button
-              type="button"
-              onClick={() => {
-                formRef.current?.reset();
-                live.discard();
-              }}
-            >
+            <Button type="button" onClick={onDiscard}>
               {t("page.discard")}
             </Button>
           ) : null}

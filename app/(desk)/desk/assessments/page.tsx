@@ -4,6 +4,7 @@ import { getFormatter, getTranslations } from "next-intl/server";
 import { EmptyState, PageHead } from "@/components/desk/page-parts";
 import { ButtonLink } from "@/components/ui/button";
 import { PackageTile, StateMark } from "@/components/ui/marks";
+import { ScrollFrame } from "@/components/ui/scroll-frame";
 import { listAssessments } from "@/lib/assessments/queries";
 import { can } from "@/lib/auth/permissions";
 import { requireStaff } from "../../_lib/session";
@@ -36,7 +37,7 @@ export default async function AssessmentsPage({ searchParams }: { searchParams: 
             </EmptyState>
           </div>
         ) : (
-          <div className="mt-6 overflow-x-auto">
+          <ScrollFrame label={t("list.title")} className="mt-6">
             <table className="head min-w-[640px]">
               <thead>
                 <tr>
@@ -74,7 +75,7 @@ export default async function AssessmentsPage({ searchParams }: { searchParams: 
                 ))}
               </tbody>
             </table>
-          </div>
+          </ScrollFrame>
         )}
       </main>
     </>

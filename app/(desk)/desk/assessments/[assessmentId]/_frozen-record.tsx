@@ -1,5 +1,6 @@
 import { getFormatter, getTranslations } from "next-intl/server";
 import { Section } from "@/components/desk/page-parts";
+import { ScrollFrame } from "@/components/ui/scroll-frame";
 import { objectHashOf } from "@/lib/assessments/object-hash";
 import type { FrozenAssessment } from "@/lib/assessments/queries";
 import type { MeasureSnapshot } from "@/lib/assessments/snapshot";
@@ -54,7 +55,7 @@ export async function FrozenMeasures({ measures }: { measures: MeasureSnapshot[]
     ].join("; ");
   return (
     <Section title={t("measures")} note={t("measuresNote")}>
-      <div className="overflow-x-auto">
+      <ScrollFrame label={t("measures")}>
         <table className="head min-w-[720px]">
           <thead>
             <tr>
@@ -85,7 +86,7 @@ export async function FrozenMeasures({ measures }: { measures: MeasureSnapshot[]
             ))}
           </tbody>
         </table>
-      </div>
+      </ScrollFrame>
     </Section>
   );
 }
