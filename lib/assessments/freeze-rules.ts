@@ -1,6 +1,6 @@
 import type { Diagnostics } from "@/lib/engine/types";
 
-export type ReasonAgainstFreezing = "notConverged" | "integratorsDiffer" | "noPackages" | "emptyPackage";
+export type ReasonAgainstFreezing = "notConverged" | "integratorsDiffer" | "noPackages" | "emptyPackage" | "packageGone";
 
 /** Everything that stands against freezing a result; the command refuses with it and the page shows it. */
 export function reasonsAgainstFreezing(diagnostics: Diagnostics, packages: readonly { items: readonly unknown[] }[]): ReasonAgainstFreezing[] {

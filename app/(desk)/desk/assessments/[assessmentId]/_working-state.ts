@@ -29,9 +29,10 @@ export async function workingState({ row, outbreak, packages, measures }: Assess
   const input = toInput(sources);
   const context = toContext(sources, { number: row.number, title: row.title });
   const undeliverable = context.packages.filter(({ deliverable }) => !deliverable).map(({ letter }) => letter);
+  const gone: ReasonAgainstFreezing[] = chosen.length < row.packageLetters.length ? ["packageGone"] : [];
   try {
     const result = await currentResult(input);
-    return { shown: { view: buildView(input, result, context, words), horizonDays: row.horizonDays }, problem: null, reasons: reasonsAgainstFreezing(result.diagnostics, input.packages), undeliverable };
+    return { shown: { view: buildView(input, result, context, words), horizonDays: row.horizonDays }, problem: null, reasons: [...gone, ...reasonsAgainstFreezing(result.diagnostics, input.packages)], undeliverable };
   } catch (error) {
     if (!(error instanceof ComputeError)) throw error;
     const lines =
