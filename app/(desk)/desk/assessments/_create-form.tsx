@@ -30,7 +30,7 @@ export function CreateAssessmentForm({ packages, defaults }: { packages: { lette
       <input type="hidden" name={fields.outbreakId.name} value={defaults.outbreakId} />
       <TextField meta={fields.title} label={t("fields.title")} hint={t("fields.titleHint")} />
       <PackageChoice meta={fields.packageLetters} packages={packages} chosen={chosen} />
-      <div className="grid gap-6 md:grid-cols-3">
+      <div className="grid items-end gap-6 md:grid-cols-3">
         <TextField meta={fields.draws} label={t("fields.draws")} hint={t("fields.drawsHint")} inputMode="numeric" />
         <TextField meta={fields.seed} label={t("fields.seed")} hint={t("fields.seedHint")} inputMode="numeric" />
         <TextField meta={fields.horizonDays} label={t("fields.horizon")} hint={t("fields.horizonHint")} inputMode="numeric" />

@@ -1,12 +1,14 @@
 import type { Metadata } from "next";
 import Link from "next/link";
-import { getFormatter, getTranslations } from "next-intl/server";
+import { getLocale, getTranslations } from "next-intl/server";
 import { EmptyState, PageHead } from "@/components/desk/page-parts";
 import { ButtonLink } from "@/components/ui/button";
 import { PackageTile, StateMark } from "@/components/ui/marks";
 import { ScrollFrame } from "@/components/ui/scroll-frame";
 import { listAssessments } from "@/lib/assessments/queries";
 import { can } from "@/lib/auth/permissions";
+import { formatShortDay } from "@/lib/figures/format";
+import { type Locale, numberLocale } from "@/lib/i18n/locales";
 import { requireStaff } from "../../_lib/session";
 import { StageLine } from "../../_lib/stage-line";
 
@@ -18,8 +20,8 @@ export default async function AssessmentsPage({ searchParams }: { searchParams: 
   const actor = await requireStaff();
   const { outbreak } = await searchParams;
   const rows = await listAssessments(outbreak);
-  const [t, format] = await Promise.all([getTranslations("Assessments"), getFormatter()]);
-  const day = (date: Date) => format.dateTime(date, { day: "numeric", month: "short", year: "numeric" });
+  const [t, locale] = await Promise.all([getTranslations("Assessments"), getLocale()]);
+  const day = (date: Date) => formatShortDay(date.toISOString().slice(0, 10), numberLocale(locale as Locale), true);
   const mayWrite = can(actor.role, "assessment:write");
   return (
     <>

@@ -1,19 +1,24 @@
-import { getFormatter, getTranslations } from "next-intl/server";
+import { getLocale, getTranslations } from "next-intl/server";
 import { Section } from "@/components/desk/page-parts";
 import { ScrollFrame } from "@/components/ui/scroll-frame";
 import { objectHashOf } from "@/lib/assessments/object-hash";
 import type { FrozenAssessment } from "@/lib/assessments/queries";
 import type { MeasureSnapshot } from "@/lib/assessments/snapshot";
+import { formatDay, formatTime } from "@/lib/i18n/dates";
+import type { Locale } from "@/lib/i18n/locales";
+
+/** Day and time of an act, with the zone. */
+export const momentOf = (at: Date, locale: Locale): string => `${formatDay(at.toISOString(), locale)}, ${formatTime(at.toISOString())}`;
 
 /** The record: who, when, why, the hashes, the files. */
 export async function FrozenRecord({ frozen }: { frozen: FrozenAssessment }) {
-  const [t, format] = await Promise.all([getTranslations("Assessments.frozen"), getFormatter()]);
-  const at = format.dateTime(frozen.frozenAt, { dateStyle: "long", timeStyle: "short", timeZone: "UTC" });
+  const [t, locale] = await Promise.all([getTranslations("Assessments.frozen"), getLocale()]);
+  const at = momentOf(frozen.frozenAt, locale as Locale);
   const base = `/desk/assessments/${frozen.assessmentId}`;
   const hash = (value: string) => <code className="text-[13px] break-all">{value}</code>;
   const facts = [
     [t("by"), frozen.frozenBy.name],
-    [t("at"), <time key="at" dateTime={frozen.frozenAt.toISOString()}>{`${at} UTC`}</time>],
+    [t("at"), <time key="at" dateTime={frozen.frozenAt.toISOString()}>{at}</time>],
     [t("reason"), frozen.reason],
     [t("engine"), frozen.engineVersion],
     [t("inputHash"), hash(frozen.inputHash)],

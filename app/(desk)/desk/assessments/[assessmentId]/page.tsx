@@ -1,7 +1,7 @@
 import type { Metadata } from "next";
 import Link from "next/link";
 import { notFound } from "next/navigation";
-import { getFormatter, getTranslations } from "next-intl/server";
+import { getLocale, getTranslations } from "next-intl/server";
 import { AssessmentResultView } from "@/components/assessments/assessment-result";
 import { FindingLede } from "@/components/assessments/finding-lede";
 import { Note, PageHead } from "@/components/desk/page-parts";
@@ -14,12 +14,13 @@ import { can } from "@/lib/auth/permissions";
 import type { Actor } from "@/lib/context";
 import { env } from "@/lib/env";
 import { DomainError } from "@/lib/errors";
+import type { Locale } from "@/lib/i18n/locales";
 import { chartWords } from "../../../_lib/assessment-words";
 import { requireStaff } from "../../../_lib/session";
 import { StageLine } from "../../../_lib/stage-line";
 import { PrintButton } from "../_print-button";
 import { WorkingAssessment } from "../_working";
-import { FrozenMeasures, FrozenRecord } from "./_frozen-record";
+import { FrozenMeasures, FrozenRecord, momentOf } from "./_frozen-record";
 import { editDefaults, workingState } from "./_working-state";
 
 type Props = { params: Promise<{ assessmentId: string }>; searchParams: Promise<{ saved?: string }> };
@@ -48,7 +49,7 @@ export default async function AssessmentPage({ params, searchParams }: Props) {
 }
 
 async function Frozen({ frozen, actor }: { frozen: FrozenAssessment; actor: Actor }) {
-  const [t, format, words] = await Promise.all([getTranslations("Assessments"), getFormatter(), chartWords()]);
+  const [t, locale, words] = await Promise.all([getTranslations("Assessments"), getLocale(), chartWords()]);
   const view = buildView(frozen.input, frozen.result, frozen.context, words);
   return (
     <>
@@ -67,7 +68,7 @@ async function Frozen({ frozen, actor }: { frozen: FrozenAssessment; actor: Acto
         <FindingLede finding={view.finding} outbreak={view.outbreak} />
         <div className="mt-5">
           <Note>
-            <b>{t("frozen.note", { date: `${format.dateTime(frozen.frozenAt, { dateStyle: "long", timeStyle: "short", timeZone: "UTC" })} UTC`, name: frozen.frozenBy.name })}</b> {t("frozen.nothing")}{" "}
+            <b>{t("frozen.note", { date: momentOf(frozen.frozenAt, locale as Locale), name: frozen.frozenBy.name })}</b> {t("frozen.nothing")}{" "}
             <a href="#record">{t("frozen.title")}</a>
           </Note>
         </div>
