@@ -16,7 +16,8 @@ try {
   fail([`(file): must be one JSON document; ${error instanceof Error ? error.message : error}`]);
 }
 try {
-  const text = `${canonicalJson(assess(raw as never))}\n`;
+  // No line end: the SHA-256 of what is written is the one that is frozen with an assessment.
+  const text = canonicalJson(assess(raw as never));
   // A pipe takes a long text in pieces; writeSync says how much it took.
   const bytes = Buffer.from(text, "utf8");
   for (let at = 0; at < bytes.length; ) {

@@ -5,6 +5,7 @@ import postgres from "postgres";
 import { afterAll, describe, expect, test } from "vitest";
 import { closeDb, db } from "@/db/client";
 import { assessments, frozenAssessments, measures } from "@/db/schema";
+import { exportInput, exportResult } from "@/lib/assessments/export-files";
 import { freezeAssessment } from "@/lib/assessments/freeze-assessment";
 import { objectHashOf } from "@/lib/assessments/object-hash";
 import { getFrozen } from "@/lib/assessments/queries";
@@ -39,10 +40,12 @@ describe("freezeAssessment", () => {
 
   test("the command line recomputes the stored result byte for byte from the exported input", async () => {
     const frozen = await aFrozenAssessment();
-    const run = spawnSync("npm", ["run", "--silent", "assess"], { input: frozen.inputText, encoding: "utf8", maxBuffer: 1 << 26 });
+    const exported = await exportInput(frozen.assessmentId);
+    const run = spawnSync("npm", ["run", "--silent", "assess"], { input: exported?.text ?? "", encoding: "utf8", maxBuffer: 1 << 26 });
     expect(run.stderr).toBe("");
     expect(run.status).toBe(0);
-    expect(run.stdout).toBe(`${frozen.resultText}\n`);
+    expect(run.stdout).toBe(frozen.resultText);
+    expect(run.stdout).toBe((await exportResult(frozen.assessmentId))?.text);
   });
 
   test("a schedule against structured law is frozen with that mark, not as deliverable", async () => {
