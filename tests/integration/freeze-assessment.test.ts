@@ -94,7 +94,9 @@ describe("freezeAssessment", () => {
       await db.update(measures).set({ evidence: sql`${measures.evidence} || ' More.'` }).where(eq(measures.id, measureId));
       return result;
     };
+    const [before] = await db.select({ evidence: measures.evidence }).from(measures).where(eq(measures.id, measureId));
     await expect(freezeAssessment(ctx, { id, version: 1, reason }, compute)).rejects.toMatchObject({ code: "conflict" });
+    await db.update(measures).set(before ?? {}).where(eq(measures.id, measureId));
   });
 
   test("can't be done twice, and closes the working row", async () => {
