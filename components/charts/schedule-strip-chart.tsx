@@ -12,6 +12,8 @@ type Props = {
   description: string;
   monthOf: (iso: string) => string;
   dateOfDay: (day: number) => string;
+  /** Last day shown, where strips share a scale. */
+  last?: number;
   /** When an item is in force, in words. */
   spanOf: (item: StripItem) => string;
   /** Moves an item by whole days; bars then take the keyboard's focus. */
@@ -21,13 +23,14 @@ type Props = {
 const STEP: Record<string, number> = { ArrowLeft: -1, ArrowDown: -1, ArrowRight: 1, ArrowUp: 1 };
 
 /** A package's schedule: names in the margin, bars in the package's colour, dates on the bars. */
-export function ScheduleStripChart({ items, dayZero, letter, title, description, monthOf, dateOfDay, spanOf, onMove }: Props) {
-  const model = scheduleStrip(items, dayZero);
+export function ScheduleStripChart({ items, dayZero, letter, title, description, monthOf, dateOfDay, last, spanOf, onMove }: Props) {
+  const model = scheduleStrip(items, dayZero, last);
   const colour = FILL[packageHue(letter)];
   const at = (percent: number) => `${percent}%`;
   return (
-    <div className="overflow-x-auto py-1">
-      <div className="grid min-w-[720px] grid-cols-[220px_minmax(0,1fr)] gap-x-5 pe-1">
+    // biome-ignore lint/a11y/noNoninteractiveTabindex: a frame that scrolls must be reachable by keyboard
+    <section aria-label={title} tabIndex={0} className="overflow-x-auto py-1">
+      <div className="grid min-w-[720px] grid-cols-[150px_minmax(0,1fr)] gap-x-4 pe-1 md:grid-cols-[220px_minmax(0,1fr)]">
         <ul className="pt-[26px]">
           {model.rows.map((row) => (
             <li key={row.key} className="flex h-9 items-center overflow-hidden border-t border-hair text-13 font-medium leading-tight first:border-rule">
@@ -51,7 +54,7 @@ export function ScheduleStripChart({ items, dayZero, letter, title, description,
           ))}
         </svg>
       </div>
-    </div>
+    </section>
   );
 }
 
@@ -59,7 +62,7 @@ type RowProps = Pick<Props, "dateOfDay" | "spanOf"> & { row: StripRow; item: Str
 
 function Row({ row, item, first, colour, dateOfDay, spanOf, move }: RowProps) {
   const at = (percent: number) => `${percent}%`;
-  const { bar, lead, law } = row;
+  const { bar, over, lead, law } = row;
   const [top, middle, end] = [row.y + 7, row.y + 18, bar.x + bar.width];
   return (
     <g>
@@ -69,6 +72,8 @@ function Row({ row, item, first, colour, dateOfDay, spanOf, move }: RowProps) {
       {law?.stop ? <line x1={at(law.x + law.width)} x2={at(law.x + law.width)} y1={middle - 6} y2={middle + 6} strokeWidth="1.5" className="stroke-rule" /> : null}
       <g {...(move ? handle(item, spanOf(item), move) : {})}>
         <rect data-mark={item.name} x={at(bar.x)} y={top} width={at(bar.width)} height="22" rx="2" fill={colour} />
+        {over ? <rect x={at(over.x)} y={top + 3} width={at(over.width)} height="16" data-mark={`${item.name} over`} className="fill-paper" /> : null}
+        {over ? <line x1={at(end)} x2={at(end)} y1={top} y2={top + 22} strokeWidth="2" stroke={colour} /> : null}
         {move ? <rect x={at(bar.x)} y={top - 3} width={at(bar.width)} height="28" rx="3" fill="none" strokeWidth="2" className="invisible stroke-focus group-focus-visible:visible" /> : null}
       </g>
       {bar.width > 9 ? (
@@ -76,8 +81,8 @@ function Row({ row, item, first, colour, dateOfDay, spanOf, move }: RowProps) {
           {dateOfDay(item.startDay)}
         </text>
       ) : null}
-      {bar.width > 20 && item.endDay !== null ? (
-        <text x={at(end)} dx="-8" y={middle + 4} textAnchor="end" className="pointer-events-none fill-on-pkg text-12">
+      {bar.width > 20 && item.endDay !== null && (!over || over.width > 9) ? (
+        <text x={at(end)} dx="-8" y={middle + 4} textAnchor="end" className={`pointer-events-none text-12 ${over ? "fill-ink" : "fill-on-pkg"}`}>
           {dateOfDay(item.endDay - 1)}
         </text>
       ) : null}

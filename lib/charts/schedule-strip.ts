@@ -1,7 +1,8 @@
 import { scaleLinear } from "d3-scale";
 
 export type StripItem = { key: string; name: string; startDay: number; endDay: number | null; leadTimeDays: number; maxDays: number | null };
-export type StripRow = { key: string; name: string; y: number; bar: { x: number; width: number; open: boolean }; lead: { x: number; width: number } | null; law: { x: number; width: number; stop: boolean } | null };
+/** Positions and widths in per cent of the strip; `over` is what of the bar lies past the longest lawful duration. */
+export type StripRow = { key: string; name: string; y: number; bar: { x: number; width: number; open: boolean }; over: { x: number; width: number } | null; lead: { x: number; width: number } | null; law: { x: number; width: number; stop: boolean } | null };
 export type StripModel = { height: number; rows: StripRow[]; months: { x: number; iso: string }[]; x: (day: number) => number };
 
 /** So that a single day can be seen. */
@@ -10,10 +11,17 @@ const ROW = 36;
 const HEAD = 26;
 const DAY_MS = 86_400_000;
 
-/** Geometry of a schedule: days from day 0 along x in per cent of the width, one row per item along y in pixels. */
-export function scheduleStrip(items: readonly StripItem[], dayZero: string): StripModel {
+/** Last day that a strip of these items should show. */
+export function stripLastDay(items: readonly StripItem[]): number {
   const ends = items.flatMap(({ startDay, endDay, maxDays }) => [endDay ?? startDay + 180, maxDays ? Math.min(startDay + maxDays, (endDay ?? startDay) + 60) : 0]);
-  const last = Math.max(90, ...ends) * 1.04;
+  return Math.max(90, ...ends) * 1.04;
+}
+
+/**
+ * Geometry of a schedule: days from day 0 along x in per cent of the width, one row per item along y in pixels.
+ * @param last shared by strips that are looked at together
+ */
+export function scheduleStrip(items: readonly StripItem[], dayZero: string, last = stripLastDay(items)): StripModel {
   const scale = scaleLinear([0, last], [0, 100]);
   const x = (day: number) => Number(scale(day).toFixed(3));
   const rows = items.map(({ key, name, startDay, endDay, leadTimeDays, maxDays }, index): StripRow => {
@@ -25,6 +33,7 @@ export function scheduleStrip(items: readonly StripItem[], dayZero: string): Str
       y: HEAD + index * ROW,
       bar: { x: x(startDay), width: Math.max(WIDTH_MIN, x(to) - x(startDay)), open: endDay === null },
       lead: leadTimeDays > 0 ? { x: Math.max(0, x(startDay - leadTimeDays)), width: x(startDay) - Math.max(0, x(startDay - leadTimeDays)) } : null,
+      over: lawful !== null && lawful < to ? { x: x(lawful), width: x(to) - x(lawful) } : null,
       law: lawful !== null && lawful > to ? { x: x(to), width: x(Math.min(lawful, last)) - x(to), stop: lawful <= last } : null,
     };
   });

@@ -57,7 +57,7 @@ export function MeasureForm({ facts, readOnly = false }: { facts: MeasureFacts; 
         {facts.version ? <input type="hidden" name="version" value={facts.version} /> : null}
         <Section title={t("what")} note={t("whatNote")}>
           <div className="grid max-w-[720px] gap-5 md:grid-cols-2">
-            <TextField meta={fields.name} label={t("name")} />
+            <TextField meta={fields.name} label={t("name")} hint={t("nameHint")} />
             <TextField meta={fields.shortName} label={t("shortName")} hint={t("shortNameHint")} />
             <TextField meta={fields.code} label={t("code")} hint={t("codeHint")} />
             <TextField meta={fields.ladder} label={t("ladderName")} hint={t("ladderHint")} />
@@ -72,8 +72,10 @@ export function MeasureForm({ facts, readOnly = false }: { facts: MeasureFacts; 
           <div className="grid max-w-[720px] gap-5 md:grid-cols-2">
             <TextField meta={fields.legalBasis} label={t("legalBasis")} />
             <TextField meta={fields.legalLink} label={t("legalLink")} inputMode="url" />
+          </div>
+          <div className="mt-5 grid max-w-[720px] grid-cols-2 gap-5 md:grid-cols-3">
             {LAW_DAYS.map((key) => (
-              <TextField key={key} meta={fields[key]} label={t(key)} inputMode="numeric" suffix={t("daysUnit")} className="max-w-[220px]" />
+              <TextField key={key} meta={fields[key]} label={t(key)} inputMode="numeric" suffix={t("daysUnit")} className="max-w-[200px]" />
             ))}
           </div>
         </Section>
@@ -116,10 +118,10 @@ function PayerCosts({ name, costs, transfers, filled, passedOn }: PayerProps) {
   const passed = passedOn || wrong(transfers);
   return (
     <details open={filled || passed || wrong(costs)} className="border-b border-hair">
-      <summary className="flex min-h-11 cursor-pointer items-center font-semibold">{name}</summary>
+      <summary className="min-h-11 cursor-pointer py-2.5 font-semibold first-letter:uppercase">{name}</summary>
       <CostFields meta={costs} />
       <details open={passed} className="ps-4">
-        <summary className="flex min-h-11 cursor-pointer items-center text-13">{t("passedOn")}</summary>
+        <summary className="min-h-11 cursor-pointer py-3 text-13">{t("passedOn")}</summary>
         <CostFields meta={transfers} />
       </details>
     </details>
@@ -129,7 +131,7 @@ function PayerCosts({ name, costs, transfers, filled, passedOn }: PayerProps) {
 function CostFields({ meta }: { meta: LineMeta }) {
   const t = useTranslations("Measures");
   const lines = meta.getFieldset();
-  return COST_KINDS.map((kind) => <QuantityFields key={kind} meta={lines[kind] as unknown as FieldMetadata<unknown>} label={t(`costs.${kind}`)} unit={t(`costUnit.${kind}`)} source={false} />);
+  return COST_KINDS.map((kind) => <QuantityFields key={kind} meta={lines[kind] as unknown as FieldMetadata<unknown>} label={t(`costs.${kind}`)} unit={t(`costUnit.${kind}`)} source={false} wide />);
 }
 
 /** Takes a measure out of the catalogue, or puts it back in. */
@@ -137,10 +139,10 @@ export function ArchiveForm({ id, archived }: { id: string; archived: boolean })
   const t = useTranslations("Measures");
   const [lastResult, action] = useActionState(archiveMeasureAction, undefined);
   return (
-    <form action={action} className="mt-6 grid justify-items-start gap-1">
+    <form action={action} className="grid justify-items-start gap-1">
       <input type="hidden" name="id" value={id} />
       <input type="hidden" name="archived" value={archived ? "no" : "yes"} />
-      <SubmitButton look={archived ? "secondary" : "quiet"} busy={archived ? t("restoring") : t("archiving")}>
+      <SubmitButton look="secondary" busy={archived ? t("restoring") : t("archiving")}>
         {archived ? t("restore") : t("archive")}
       </SubmitButton>
       <p className="hint">{t("archiveNote")}</p>

@@ -2,8 +2,10 @@ import type { Metadata } from "next";
 import { notFound } from "next/navigation";
 import { getTranslations } from "next-intl/server";
 import { requireStaff } from "@/app/(desk)/_lib/session";
-import { Note, PageHead } from "@/components/desk/page-parts";
+import { Note, PageHead, Section } from "@/components/desk/page-parts";
+import { StaffCaution } from "@/components/desk/staff-caution";
 import { can } from "@/lib/auth/permissions";
+import { env } from "@/lib/env";
 import { getMeasure } from "@/lib/measures/queries";
 import { measureFacts } from "../_facts";
 import { ArchiveForm, MeasureForm } from "../_measure-form";
@@ -33,7 +35,12 @@ export default async function MeasurePage({ params, searchParams }: Props) {
         </div>
       ) : null}
       <MeasureForm key={measure.version} facts={measureFacts(measure)} readOnly={readOnly} />
-      {readOnly ? null : <ArchiveForm id={measure.id} archived={measure.archived} />}
+      {readOnly ? null : (
+        <Section title={t("catalogue")}>
+          <ArchiveForm id={measure.id} archived={measure.archived} />
+        </Section>
+      )}
+      <StaffCaution demonstration={env().demo} />
     </main>
   );
 }

@@ -24,7 +24,9 @@ export function PackageForm({ facts, measures, readOnly }: { facts: Facts; measu
   const element = useRef<HTMLFormElement>(null);
   const [lastResult, action] = useActionState(updatePackageAction, undefined);
   const { letter, lines: saved, ...rest } = facts;
-  const defaultValue = { ...rest, lines: saved.map((line) => ({ ...line, included: line.included ? "on" : "", never: line.never ? "on" : "" })) };
+  // As a browser sends it: text, and nothing for a box without a tick.
+  const ticked = (on: boolean) => (on ? "on" : undefined);
+  const defaultValue = { ...rest, version: String(rest.version), lines: saved.map((line) => ({ ...line, included: ticked(line.included), never: ticked(line.never) })) };
   const [form, fields] = useForm<Typed, string[]>({ id: "package", lastResult: lastResult ?? null, defaultValue: defaultValue as never });
   const rows = fields.lines.getFieldList();
   const measureOf = new Map(measures.map((measure) => [measure.id, measure]));
@@ -57,7 +59,7 @@ export function PackageForm({ facts, measures, readOnly }: { facts: Facts; measu
   return (
     <form {...getFormProps(form)} ref={element} action={action}>
       <PackageStrip lines={strip} dayZero={facts.dayZero} letter={letter} {...(readOnly ? {} : { onMove: move })} />
-      {form.dirty ? (
+      {fields.name.dirty || fields.lines.dirty ? (
         <p className="sm mut mt-2" role="status">
           {t("unsaved")}
         </p>

@@ -23,14 +23,14 @@ export function PackageLine({ line, name, dayZero, readOnly, again }: { line: Li
   const [first, last] = [day(line.from.value), day(line.until.value)];
   const shown = "hidden group-has-[[data-included]:checked]:block";
   return (
-    <fieldset className={`group grid min-w-0 items-start gap-x-4 border-b border-hair py-1 has-[[data-included]:checked]:py-2 ${LINE_COLUMNS}`}>
+    <fieldset className={`group grid min-w-0 grid-cols-2 items-start gap-x-4 border-b border-hair py-1 has-[[data-included]:checked]:py-2 ${LINE_COLUMNS}`}>
       <legend className="sr-only">{name}</legend>
       <input type="hidden" name={line.measureId.name} value={String(line.measureId.initialValue ?? "")} />
-      <label className="mb-0 flex min-h-11 items-center gap-3 text-15 font-normal group-has-[[data-included]:checked]:font-semibold lg:min-h-10">
+      <label className="col-span-2 mb-0 flex min-h-11 items-center gap-3 text-15 font-normal lg:col-span-1 group-has-[[data-included]:checked]:font-semibold lg:min-h-10">
         <input key={line.included.key} type="checkbox" name={line.included.name} data-included="" defaultChecked={line.included.initialValue === "on"} />
         {name}
       </label>
-      <div className={shown}>
+      <div className={`${shown} col-span-2 lg:col-span-1`}>
         <p className="text-13 text-ink-2 lg:sr-only">{t("columns.uptake")}</p>
         <div className={UPTAKE_COLUMNS}>
           {PARTS.map((part) => (
@@ -38,15 +38,15 @@ export function PackageLine({ line, name, dayZero, readOnly, again }: { line: Li
           ))}
         </div>
       </div>
-      <div className={`${shown} max-lg:mt-2 max-lg:max-w-[222px]`}>
+      <div className={`${shown} max-lg:mt-2`}>
         <Cell meta={line.from} label={t("columns.from")} type="date" />
         <p className="xs dim mt-1">{first === null ? t("dayUnknown") : t("day", { day: first })}</p>
       </div>
-      <div className={`${shown} max-lg:mt-2 max-lg:max-w-[222px]`}>
+      <div className={`${shown} max-lg:mt-2`}>
         <Cell meta={line.until} label={t("columns.until")} type="date" />
         <p className="xs dim mt-1">{first !== null && last !== null && last >= first ? t("dayOf", { day: last, days: last - first + 1 }) : null}</p>
       </div>
-      <div className={shown}>
+      <div className={`${shown} col-span-2 max-lg:mt-1 lg:col-span-1`}>
         <label className="mb-0 flex min-h-11 items-center gap-2 font-normal lg:min-h-10">
           <input key={line.never.key} type="checkbox" name={line.never.name} defaultChecked={line.never.initialValue === "on"} />
           {t("columns.never")}
@@ -58,7 +58,7 @@ export function PackageLine({ line, name, dayZero, readOnly, again }: { line: Li
         )}
       </div>
       {wrong.length > 0 ? (
-        <div className="lg:col-span-5">
+        <div className="col-span-2 lg:col-span-5">
           {wrong.map(({ errors, errorId, field }) => (
             <p key={field} id={errorId} className="ferr">
               {errors.join(" ")}

@@ -9,7 +9,7 @@ import { dateOf } from "@/lib/packages/days";
 export type StripLine = { key: string; index: number; name: string; startDay: number; endDay: number | null; leadTimeDays: number; maxDays: number | null };
 
 /** A package's schedule. Where it may be moved and script runs, arrow keys move a bar. */
-export function PackageStrip({ lines, dayZero, letter, onMove }: { lines: StripLine[]; dayZero: string; letter: string; onMove?: (line: StripLine, days: number) => void }) {
+export function PackageStrip({ lines, dayZero, letter, last, onMove }: { lines: StripLine[]; dayZero: string; letter: string; /** Last day shown, where strips share a scale. */ last?: number; onMove?: (line: StripLine, days: number) => void }) {
   const t = useTranslations("Packages");
   const locale = useLocale() as Locale;
   const [alive, setAlive] = useState(false);
@@ -28,6 +28,7 @@ export function PackageStrip({ lines, dayZero, letter, onMove }: { lines: StripL
         description={t("stripDesc")}
         monthOf={(iso) => month.format(new Date(`${iso}T00:00:00Z`))}
         dateOfDay={shortDay}
+        {...(last === undefined ? {} : { last })}
         spanOf={({ startDay, endDay }) => (endDay === null ? t("spanOpen", { from: shortDay(startDay) }) : t("span", { from: shortDay(startDay), to: shortDay(endDay - 1) }))}
         {...(movable ? { onMove: (index: number, days: number) => onMove(lines[index] as StripLine, days) } : {})}
       />

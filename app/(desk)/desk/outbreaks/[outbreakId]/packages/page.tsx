@@ -9,11 +9,12 @@ import { StaffCaution } from "@/components/desk/staff-caution";
 import { ButtonLink } from "@/components/ui/button";
 import { PackageTile } from "@/components/ui/marks";
 import { can } from "@/lib/auth/permissions";
+import { stripLastDay } from "@/lib/charts/schedule-strip";
 import { env } from "@/lib/env";
 import { listMeasures, listMeasuresById } from "@/lib/measures/queries";
 import { getOutbreak } from "@/lib/outbreaks/queries";
-import { listPackages } from "@/lib/packages/queries";
-import { PackageStrip } from "./_package-strip";
+import { listPackages, type Package } from "@/lib/packages/queries";
+import { PackageStrip, type StripLine } from "./_package-strip";
 import { NewPackageForm } from "./_package-forms";
 
 export const metadata: Metadata = { title: "Packages" };
@@ -24,6 +25,12 @@ export default async function PackagesPage({ params }: { params: Promise<{ outbr
   const outbreak = await getOutbreak(outbreakId).catch(() => notFound());
   const [t, rows, measures] = await Promise.all([getTranslations("Packages"), listPackages(outbreakId), listMeasures()]);
   const held = new Map((await listMeasuresById(rows.flatMap(({ items }) => items.map(({ measureId }) => measureId)))).map((measure) => [measure.id, measure]));
+  const linesOf = ({ items }: Package) =>
+    items.map(({ measureId, startDay, endDay }, index): StripLine => {
+      const { name = "", leadTimeDays = 0, maxDays = null } = held.get(measureId) ?? {};
+      return { key: `${measureId}-${index}`, index, name, startDay, endDay, leadTimeDays, maxDays };
+    });
+  const last = stripLastDay(rows.flatMap(linesOf));
   const mayWrite = can(actor.role, "package:write");
   return (
     <>
@@ -60,10 +67,8 @@ export default async function PackagesPage({ params }: { params: Promise<{ outbr
               <PackageStrip
                 letter={row.letter}
                 dayZero={outbreak.dayZero}
-                lines={row.items.map(({ measureId, startDay, endDay }, index) => {
-                  const { name = "", leadTimeDays = 0, maxDays = null } = held.get(measureId) ?? {};
-                  return { key: `${measureId}-${index}`, index, name, startDay, endDay, leadTimeDays, maxDays };
-                })}
+                lines={linesOf(row)}
+                last={last}
               />
             </Section>
           ))

@@ -2,6 +2,7 @@ import { useTranslations } from "next-intl";
 import { EnoughMark } from "@/components/ui/marks";
 import { useShown } from "@/components/assessments/use-shown";
 import type { AssessmentView } from "@/lib/assessments/view";
+import { percentShown } from "@/lib/figures/round";
 import type { Measure } from "@/lib/measures/queries";
 import type { Outbreak } from "@/lib/outbreaks/queries";
 import { readOut } from "@/lib/outbreaks/read-out";
@@ -23,11 +24,11 @@ export function PhaseRatios({ outbreak, row, measures, view }: Props) {
     if (names.length > 0) return names.join(", ");
     if (index === 0) return t("phaseNone");
     if (index < phases.length - 1 || susceptible === null || !last) return t("phaseAllLifted");
-    return t("phaseLifted", { percent: Math.round(susceptible * 100), number: shown.ratio(1 / last.effectiveRatioAtStart) });
+    return t("phaseLifted", { ...percentShown(susceptible), number: shown.ratio(1 / last.effectiveRatioAtStart) });
   };
   return (
     // biome-ignore lint/a11y/noNoninteractiveTabindex: a frame that scrolls must be reachable by keyboard
-    <div role="region" aria-label={t("phases")} tabIndex={0} className="overflow-x-auto">
+    <section aria-label={t("phasesTable")} tabIndex={0} className="overflow-x-auto">
       <table className="head min-w-[560px]">
         <thead>
           <tr>
@@ -59,7 +60,7 @@ export function PhaseRatios({ outbreak, row, measures, view }: Props) {
           })}
         </tbody>
       </table>
-    </div>
+    </section>
   );
 }
 
