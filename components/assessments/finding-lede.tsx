@@ -39,7 +39,7 @@ function valuesOf(sentence: FindingSentence, shown: Shown, list: (letters: strin
     case "avertsMost":
       return { letter: sentence.letter, other: sentence.over?.letter ?? "", ...percentShown(sentence.over?.chance ?? 0), compared: sentence.over ? "yes" : "no", ...persons(sentence.averted) };
     case "avertAlike":
-      return { letter: sentence.letter, other: sentence.other, ...percentShown(sentence.chance), otherDeaths: wholePersons(sentence.otherAverted.mid), ...persons(sentence.averted) };
+      return { letter: sentence.letter, other: sentence.other, ...percentShown(sentence.chance), otherDeaths: wholePersons(sentence.otherAverted.mid), same: sentence.same ? "yes" : "no", ...persons(sentence.averted) };
     case "avertsOnly":
       return { letter: sentence.letter, single: sentence.single ? "yes" : "no", ...persons(sentence.averted) };
     case "noneAverts":

@@ -12,7 +12,7 @@ export type FindingSentence =
   | { key: "noneEnough"; letter: string; single: boolean; reproductionNumber: Range; ratio: Range; furtherCut: number }
   | { key: "afterLift"; letter: string; endDay: number; susceptibleShare: number; outcome: "averts" | "worse" | "noDifference"; deaths: Range }
   | { key: "avertsMost"; letter: string; averted: Range; over: { letter: string; chance: number } | null }
-  | { key: "avertAlike"; letter: string; other: string; averted: Range; otherAverted: Range; chance: number }
+  | { key: "avertAlike"; letter: string; other: string; averted: Range; otherAverted: Range; chance: number; same: boolean }
   | { key: "avertsOnly"; letter: string; averted: Range; single: boolean }
   | { key: "noneAverts"; single: boolean }
   | { key: "worse"; letter: string; more: Range }
@@ -21,8 +21,10 @@ export type FindingSentence =
 
 type Judged = { letter: string; figures: PackageFigures; endDay: number | null };
 
-/** Paired draws between these shares don't tell two packages apart. */
-const ALIKE: readonly [number, number] = [0.4, 0.6];
+/** Ahead in fewer paired draws than this, the better of two packages isn't told apart from the other. */
+const CLEARLY_AHEAD = 0.6;
+/** Neither is ahead in more draws than this: the two do the same. */
+const SAME = 0.01;
 /** Of packages that are enough and end, this many are followed to what comes after their lift. */
 const FOLLOWED_MAX = 2;
 
@@ -101,11 +103,12 @@ function avertedSentences(result: SlimResult, judged: Judged[]): FindingSentence
   const averted = best.figures.deathsAverted.asScheduled;
   if (!second) return [{ key: "avertsOnly", letter: best.letter, averted, single }, ...sentences, costs([best], result.comparison)];
 
-  const chance = result.comparison.pairs.find(({ a, b }) => a === best.letter && b === second.letter)?.chanceAvertsMore ?? null;
-  const alike = chance !== null && chance >= ALIKE[0] && chance <= ALIKE[1];
+  const ahead = (one: string, other: string) => result.comparison.pairs.find(({ a, b }) => a === one && b === other)?.chanceAvertsMore ?? null;
+  const chance = ahead(best.letter, second.letter);
+  const same = chance !== null && Math.max(chance, ahead(second.letter, best.letter) ?? chance) < SAME;
   return [
-    alike
-      ? { key: "avertAlike", letter: best.letter, other: second.letter, averted, otherAverted: second.figures.deathsAverted.asScheduled, chance }
+    chance !== null && chance <= CLEARLY_AHEAD
+      ? { key: "avertAlike", letter: best.letter, other: second.letter, averted, otherAverted: second.figures.deathsAverted.asScheduled, chance, same }
       : { key: "avertsMost", letter: best.letter, averted, over: chance === null ? null : { letter: second.letter, chance } },
     ...sentences,
     costs([best, second], result.comparison),

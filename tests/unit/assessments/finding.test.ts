@@ -135,7 +135,12 @@ describe("what averts deaths", () => {
     expect(costs({ ...result.comparison, incremental: [{ from: "none", to: "B", cost: 30e6, deathsAverted: 40, ratio: 1 }] })).toMatchObject({ more: null });
   });
   test("without draws nothing is said of chances", () => expect(finding(two(null), schedule(ends))[1]).toMatchObject({ key: "avertsMost", over: null }));
-  test("two that paired draws don't tell apart avert alike", () => expect(finding(two(0.52), schedule(ends))[1]).toMatchObject({ key: "avertAlike", letter: "B", other: "A", chance: 0.52 }));
+  test("two that paired draws don't tell apart avert alike", () => expect(finding(two(0.52), schedule(ends))[1]).toMatchObject({ key: "avertAlike", letter: "B", other: "A", chance: 0.52, same: false }));
+  test("two that do the same in every draw are said to", () => {
+    const result = two(0, [40, 376, 745]);
+    const pairs = [{ a: "A", b: "B", chanceAvertsMore: 0 }, { a: "B", b: "A", chanceAvertsMore: 0 }];
+    expect(finding({ ...result, comparison: { ...result.comparison, pairs } }, schedule(ends))[1]).toMatchObject({ key: "avertAlike", letter: "A", other: "B", same: true });
+  });
   test("one that can't be told from nothing leaves the other alone", () => {
     expect(finding(two(0.1, [-20, 30, 80]), schedule(ends))[1]).toMatchObject({ key: "avertsOnly", letter: "A", single: false });
   });
