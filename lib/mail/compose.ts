@@ -44,8 +44,8 @@ export async function composeMessage(mail: WrittenMail, facts: MessageFacts, sen
     subject: mail.subject,
     date: facts.date,
     messageId: facts.messageId,
-    text: mail.text,
-    html: mail.html,
+    text: withLineEnds(mail.text),
+    html: withLineEnds(mail.html),
     textEncoding: "quoted-printable",
     baseBoundary: createHash("sha256").update(facts.messageId).digest("hex").slice(0, 24),
     headers: headersOf(facts, sender),
@@ -56,6 +56,9 @@ export async function composeMessage(mail: WrittenMail, facts: MessageFacts, sen
     .build();
   return sender.dkim ? sign(message, sender.dkim) : message;
 }
+
+// Every line ends with CRLF before it is signed: a lone CR or LF could be read as the end of a message (smuggling).
+const withLineEnds = (text: string): string => text.replace(/\r\n?|\n/g, "\r\n");
 
 const ENGLISH_NAMES = new Intl.DisplayNames("en", { type: "language" });
 const prepared = (key: string, value: string) => ({ key, value: { prepared: true, value } });

@@ -1,3 +1,4 @@
+import { capitalise } from "../../i18n/capitalise";
 import type { Locale } from "../../i18n/locales";
 import { translatorOf } from "../../i18n/translator";
 import type { FootLine } from "../model";
@@ -10,7 +11,7 @@ export async function cautionLines(locale: Locale, invented: { place: string; ou
   return [
     { text: t("caution.orders"), links: [] },
     { text: t("caution.figures"), links: [] },
-    ...(invented ? [{ text: caution("demonstrationOf", { place: invented.place, illness: invented.outbreakName }), links: [] }] : []),
+    ...(invented ? [{ text: caution("demonstrationOf", { place: invented.place, illness: capitalise(invented.outbreakName, locale) }), links: [] }] : []),
   ];
 }
 

@@ -187,7 +187,7 @@ function Figures({ head, rows, note }: { head: readonly string[]; rows: FigureRo
         <tbody>
           {rows.map(({ label, value, range }) => (
             <tr key={label}>
-              <th scope="row" className="m-ink m-hair" style={{ ...base, ...cell, fontSize: 15, lineHeight: "22px", fontWeight: 400 }}>
+              <th scope="row" className="m-ink m-hair" style={{ ...base, ...cell, width: "56%", fontSize: 15, lineHeight: "22px", fontWeight: 400 }}>
                 {label}
               </th>
               <td className="m-ink m-hair" style={{ ...base, ...cell, paddingInlineStart: 12, fontSize: 17, lineHeight: "22px", fontWeight: 600, textAlign: "end" }}>
@@ -227,7 +227,7 @@ function Changes({ title, head, rows }: Extract<MailBlock, { kind: "changes" }>)
       <tbody>
         {rows.map(({ label, before, now }) => (
           <tr key={label}>
-            <th scope="row" className="m-ink m-hair" style={{ ...base, ...cell, fontSize: 15, lineHeight: "22px", fontWeight: 400 }}>
+            <th scope="row" className="m-ink m-hair" style={{ ...base, ...cell, width: "56%", fontSize: 15, lineHeight: "22px", fontWeight: 400 }}>
               {label}
             </th>
             <td className="m-ink2 m-hair" style={{ ...small, ...cell, paddingInlineStart: 12, textAlign: "end" }}>

@@ -1,5 +1,5 @@
 import { LOCALES } from "../../i18n/locales";
-import type { MailBlock, MailModel } from "../model";
+import type { MailBlock, MailLink, MailModel } from "../model";
 
 /** The text part: the same words, figures and links as the HTML part, in the same order. */
 export function toText(mail: MailModel): string {
@@ -10,7 +10,7 @@ export function toText(mail: MailModel): string {
     mail.meta === null ? mail.title : `${mail.title}\n${mail.meta}`,
     ...mail.blocks.map((block) => blockText(block, isolate)),
     "-----",
-    ...mail.foot.map(({ text, links }) => [text, ...links.map((link) => `${link.text}:\n${link.href}`)].filter((line) => line !== "").join("\n")),
+    ...mail.foot.map(({ text, links }) => [text, ...links.map(linkText)].filter((line) => line !== "").join("\n")),
   ];
   return `${parts.map(tidy).join("\n\n")}\n`;
 }
@@ -33,9 +33,12 @@ function blockText(block: MailBlock, isolate: (text: string) => string): string 
     case "list":
       return [block.title, ...block.items.map(({ title, text }) => `- ${title}\n  ${text}`)].join("\n");
     case "button":
-      return `${block.link.text}:\n${block.link.href}`;
+      return linkText(block.link);
   }
 }
+
+// A link whose words are its address is said once.
+const linkText = ({ text, href }: MailLink): string => (href === text || href === `mailto:${text}` ? text : `${text}\n${href}`);
 
 // Bare carriage returns and other controls have no place in a mail (they can be read as a second message).
 const tidy = (text: string): string => text.replace(/\r\n?/g, "\n").replace(/[^\P{Cc}\n]/gu, "");
