@@ -1,6 +1,6 @@
 import { sql } from "drizzle-orm";
 import { check, integer, jsonb, pgTable, primaryKey, text, uniqueIndex, uuid } from "drizzle-orm/pg-core";
-import type { BriefingState, FigureRef, Paragraph, PartKey } from "../../lib/briefings/constants";
+import type { BriefingState, FigureRef, Paragraph, Revision } from "../../lib/briefings/constants";
 import type { Locale } from "../../lib/i18n/locales";
 import { at, createdAt, id, sha256, updatedAt, version } from "./columns";
 import { assessments, frozenAssessments } from "./assessments";
@@ -25,6 +25,8 @@ export const briefings = pgTable(
     figures: jsonb("figures").$type<FigureRef[]>().notNull().default([]),
     /** ISO date on which the authority looks again. */
     reviewDate: text("review_date"),
+    /** What the version being written is to the one that residents read; null before the first release. */
+    revision: jsonb("revision").$type<Revision>(),
     /** Number of the version being written; a submission snapshots it, a return opens the next. */
     versionNumber: integer("version_number").notNull().default(1),
     version: version(),
@@ -123,5 +125,3 @@ export const signatureVoids = pgTable("signature_voids", {
     .references(() => users.id),
   at: at("at").notNull(),
 });
-
-export type { PartKey };

@@ -1,3 +1,5 @@
+import type { Locale } from "../i18n/locales";
+
 /** States of a briefing, from the first version on; the spine walks a part of them under the same names. */
 export const BRIEFING_STATES = [
   "draft",
@@ -40,3 +42,10 @@ export type Paragraph = {
 
 /** A bound figure: a reference into the frozen assessment. `package` is a letter, or "none" for no further measures. */
 export type FigureRef = { ref: string; figure: string; package: string; form: "value" | "interval" };
+
+/** Why a published briefing is written again; a correction says per language what was wrong and what it changes. */
+export type Revision = { kind: "update" } | { kind: "correction"; notes: Partial<Record<Locale, { cause: string; effect: string }>> };
+
+/** Items of the reviewer's checklist, 1 to 18. */
+export const CHECKLIST_ITEMS = Array.from({ length: 18 }, (_, index) => index + 1);
+export type ChecklistAnswer = { answer: "pass" | "fail" | "notApplicable"; note: string };
