@@ -41,6 +41,9 @@ export function daysThatCount(own: readonly ScheduledItem[], { daysUsed, maxDays
   return mostDays(spans, maxDaysWithin);
 }
 
+/** What is left of a longest lawful duration after earlier orders; null: no limit. */
+export const daysLeft = (maxDays: number | null, daysUsed: number | null): number | null => (maxDays === null ? null : Math.max(0, maxDays - (daysUsed ?? 0)));
+
 /** Most days in force in any window of the given length; a window that holds most starts or ends with a span. */
 function mostDays(spans: readonly Span[], within: number | null): number {
   const inside = (from: number, to: number) => spans.reduce((sum, span) => sum + Math.max(0, Math.min(span.to, to) - Math.max(span.from, from)), 0);

@@ -50,8 +50,8 @@ export function DeletePackageForm({ id, letter }: { id: string; letter: string }
   const [lastResult, action] = useActionState(deletePackageAction, undefined);
   const [form, fields] = useForm<{ id: string; confirmed: string }, string[]>({ id: "delete-package", lastResult: lastResult ?? null });
   return (
-    <details className="mt-8 border-t border-hair pt-3">
-      <summary className="cursor-pointer text-13 font-semibold">{t("delete")}</summary>
+    <details open={form.status === "error"} className="mt-8 border-t border-hair pt-3">
+      <summary className="min-h-11 cursor-pointer text-13 font-semibold">{t("delete")}</summary>
       <form {...getFormProps(form)} action={action} className="mt-3 grid justify-items-start gap-3">
         <ErrorSummary form={form} title={forms("summary")} names={{ confirmed: t("delete") }} />
         <input type="hidden" name="id" value={id} />

@@ -13,6 +13,7 @@ import { stripLastDay } from "@/lib/charts/schedule-strip";
 import { env } from "@/lib/env";
 import { listMeasures, listMeasuresById } from "@/lib/measures/queries";
 import { getOutbreak } from "@/lib/outbreaks/queries";
+import { daysLeft } from "@/lib/packages/legal-findings";
 import { listPackages, type Package } from "@/lib/packages/queries";
 import { PackageStrip, type StripLine } from "./_package-strip";
 import { NewPackageForm } from "./_package-forms";
@@ -27,8 +28,8 @@ export default async function PackagesPage({ params }: { params: Promise<{ outbr
   const held = new Map((await listMeasuresById(rows.flatMap(({ items }) => items.map(({ measureId }) => measureId)))).map((measure) => [measure.id, measure]));
   const linesOf = ({ items }: Package) =>
     items.map(({ measureId, startDay, endDay }, index): StripLine => {
-      const { name = "", leadTimeDays = 0, maxDays = null } = held.get(measureId) ?? {};
-      return { key: `${measureId}-${index}`, index, name, startDay, endDay, leadTimeDays, maxDays };
+      const { name = "", leadTimeDays = 0, maxDays = null, daysUsed = null } = held.get(measureId) ?? {};
+      return { key: `${measureId}-${index}`, index, name, startDay, endDay, leadTimeDays, maxDays: daysLeft(maxDays, daysUsed) };
     });
   const last = stripLastDay(rows.flatMap(linesOf));
   const mayWrite = can(actor.role, "package:write");

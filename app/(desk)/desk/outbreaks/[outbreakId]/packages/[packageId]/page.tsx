@@ -17,6 +17,7 @@ import { type Locale, numberLocale } from "@/lib/i18n/locales";
 import { listMeasures, listMeasuresById, type Measure } from "@/lib/measures/queries";
 import { getOutbreak } from "@/lib/outbreaks/queries";
 import { dateOf } from "@/lib/packages/days";
+import { daysLeft } from "@/lib/packages/legal-findings";
 import { getPackage, listPackages, type Package } from "@/lib/packages/queries";
 import { checkPackage } from "@/lib/packages/rules";
 import { CopyPackageForm, DeletePackageForm } from "../_package-forms";
@@ -96,7 +97,7 @@ export default async function PackagePage({ params, searchParams }: Props) {
             key={row.version}
             readOnly={!mayWrite}
             facts={{ id: row.id, version: row.version, letter: row.letter, name: row.name, dayZero, lines: linesOf(row, measures, dayZero) }}
-            measures={measures.map(({ id, name, leadTimeDays, maxDays }) => ({ id, name, leadTimeDays, maxDays }))}
+            measures={measures.map(({ id, name, leadTimeDays, maxDays, daysUsed }) => ({ id, name, leadTimeDays, maxDays: daysLeft(maxDays, daysUsed) }))}
           />
         </section>
         <div className="mt-8 grid gap-x-16 gap-y-10 border-t border-hair pt-5 lg:grid-cols-[minmax(0,1fr)_340px]">
