@@ -26,7 +26,7 @@ export default async function RegisterPage({ searchParams }: { searchParams: Sea
   const run = oldest === undefined || newest === undefined ? [] : await readChain(Math.max(1, oldest - 1), newest);
   const fault = firstFault(run, run[0]?.seq === 1 ? GENESIS : null);
   const query = (extra: { before?: string }) =>
-    `/desk/register?${new URLSearchParams(Object.entries({ ...(filter.action ? { action: filter.action } : {}), ...(filter.subject ? { subject: filter.subject } : {}), ...extra })))}`;
+    `/desk/register?${new URLSearchParams({ ...(filter.action ? { action: filter.action } : {}), ...(filter.subject ? { subject: filter.subject } : {}), ...extra })}`;
   return (
     <main id="main" className="wrap">
       <PageHead title={t("title")} lede={t("lede")} />
