@@ -34,7 +34,7 @@ export default async function MeasuresPage({ searchParams }: { searchParams: Sea
     <>
       {newest ? <StageLine outbreakId={newest.id} current="measures" /> : null}
       <main id="main" className="wrap">
-        <PageHead title={t("title")} lede={t("lede", { count: all.length })} actions={add} />
+        <PageHead title={t("title")} lede={t("lede")} actions={add} />
         {all.length === 0 ? (
           <EmptyState title={t("empty")} action={add}>
             {t("emptyText")}

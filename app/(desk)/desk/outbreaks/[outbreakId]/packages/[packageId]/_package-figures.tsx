@@ -42,7 +42,7 @@ export function PackageFigures({ view }: { view: AssessmentView }) {
         <dt className="sm mut">{t("cost")}</dt>
         <dd className="big">
           {money.value}
-          <span className="u">{t("money", { currency, power: unit.power })}</span>
+          <span className="u">{t("money", { currency, power: String(unit.power) })}</span>
         </dd>
         <dd className="sm mut">{money.interval ? t("costInterval", { interval: money.interval, year: String(priceYear) }) : t("costPrices", { year: String(priceYear) })}</dd>
       </div>
