@@ -80,7 +80,7 @@ export function openTransport({ url, connections, name, timeouts }: TransportOpt
         };
         pool.send(mail as unknown as Parameters<typeof pool.send>[0], (error, info) => {
           if (!error) {
-            resolve({ phase, accepted: true, refusedUs: false, fault: null, ...parseReply(info.response) });
+            resolve({ phase, accepted: true, refusedUs: false, fault: null, ...parseReply(info?.response) });
             return;
           }
           const answered = error.responseCode !== undefined;

@@ -23,7 +23,10 @@ const PLACES: { href: string; key: "desk" | "outbreaks" | "measures" | "briefing
 
 export default async function DeskLayout({ children }: { children: ReactNode }) {
   const actor = await requireStaff();
-  const [t, roles] = await Promise.all([getTranslations("Desk"), getTranslations("Roles")]);
+  const [t, roles, deliveries] = await Promise.all([getTranslations("Desk"), getTranslations("Roles"), getTranslations("Deliveries")]);
+  const places = PLACES.filter(({ needs }) => can(actor.role, needs)).map(({ href, key }) => ({ href, label: t(`places.${key}`) }));
+  // Before the settings, for those who send.
+  if (can(actor.role, "delivery:read")) places.splice(-1, 0, { href: "/desk/deliveries", label: deliveries("title") });
   const locale = "en";
   return (
     <html lang={locale} dir={LOCALES[locale].dir}>
@@ -33,7 +36,7 @@ export default async function DeskLayout({ children }: { children: ReactNode }) 
         </a>
         <RunningHead
           label={t("places.label")}
-          places={PLACES.filter(({ needs }) => can(actor.role, needs)).map(({ href, key }) => ({ href, label: t(`places.${key}`) }))}
+          places={places}
           demonstration={env().demo ? t("demonstration") : null}
           role={roles(actor.role)}
           signOut={

@@ -81,9 +81,9 @@ async function metaLine(content: RenderedBriefing, { number, publishedAt }: Brie
   const { locale } = content;
   const article = await translatorOf(locale, "Article");
   return [
-    article("meta", { illness: capitalise(content.outbreakName, locale), place: content.place, number: content.briefingNumber }),
+    article("meta", { illness: capitalise(content.outbreakName, locale), place: content.place, number: String(content.briefingNumber) }),
     article("released", { day: formatDay(publishedAt, locale), time: formatTime(publishedAt) }),
-    ...(number > 1 ? [article("version", { number })] : []),
+    ...(number > 1 ? [article("version", { number: String(number) })] : []),
   ].join(" · ");
 }
 

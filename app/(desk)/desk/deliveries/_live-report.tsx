@@ -34,7 +34,7 @@ function Report({ first }: { first: DeliveryReport }) {
     <>
       {/* One line in every case, so that nothing below it moves. */}
       <p className="sm mut mt-3">
-        {isError ? t("stopped") : t("readAt", { time: format.dateTime(new Date(report.readAt), { hour: "2-digit", minute: "2-digit", second: "2-digit" }) })} <a href="/desk/deliveries">{t("again")}</a>
+        {isError ? t("stopped") : t("readAt", { time: format.dateTime(new Date(report.readAt), { hour: "2-digit", minute: "2-digit", second: "2-digit", hourCycle: "h23" }) })} <a href="/desk/deliveries">{t("again")}</a>
       </p>
       <Section title={t("releases.title")} note={t("releases.note")}>
         {report.releases.length === 0 ? (
@@ -50,7 +50,7 @@ function Report({ first }: { first: DeliveryReport }) {
                 <>
                   <Link href={`/desk/briefings/${row.briefingId}`}>{row.title}</Link>
                   <span className="sm mut block font-normal">
-                    {t(`releases.${row.kind}`, { number: row.number, date: format.dateTime(new Date(row.publishedAt), { day: "numeric", month: "short", year: "numeric" }) })}, {t(`urgency.${row.urgency}`)}
+                    {t(`releases.${row.kind}`, { number: String(row.number), date: format.dateTime(new Date(row.publishedAt), { day: "numeric", month: "short", year: "numeric" }) })}, {t(`urgency.${row.urgency}`)}
                   </span>
                 </>
               ),

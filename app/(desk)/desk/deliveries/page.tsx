@@ -8,6 +8,8 @@ import { LiveReport } from "./_live-report";
 
 export const metadata: Metadata = { title: "Deliveries" };
 
+const endOf = (reply: string | null) => (reply === null ? "crash" : reply === "ETIMEDOUT" ? "silence" : "broken");
+
 export default async function DeliveriesPage() {
   const ctx = await staffCtx(await requireStaff("delivery:read"));
   const [report, unknown, t, format] = await Promise.all([getDeliveryReport(ctx), listUnknown(ctx), getTranslations("Deliveries"), getFormatter()]);
@@ -24,7 +26,7 @@ export default async function DeliveriesPage() {
           <EmptyState title={t("unknown.none")} />
         ) : (
           <div className="mt-4 overflow-x-auto">
-            <table className="head">
+            <table className="head min-w-[720px]">
               <thead>
                 <tr>
                   <th scope="col">{t("unknown.mail")}</th>
@@ -39,9 +41,9 @@ export default async function DeliveriesPage() {
                   <tr key={id}>
                     <th scope="row">{title ?? t(`kinds.${kind}`)}</th>
                     <td className="nw">{LOCALES[locale].name}</td>
-                    <td className="sm nw">{format.dateTime(new Date(at), { day: "numeric", month: "short", hour: "2-digit", minute: "2-digit", second: "2-digit" })}</td>
-                    <td className="nw">{reply ?? t("unknown.crash")}</td>
-                    <td className="xs dim">{id.slice(0, 8)}</td>
+                    <td className="sm nw">{format.dateTime(new Date(at), { day: "numeric", month: "short", hour: "2-digit", minute: "2-digit", second: "2-digit", hourCycle: "h23" })}</td>
+                    <td className="nw">{t(`unknown.ends.${endOf(reply)}`)}</td>
+                    <td className="dim nw">{id.slice(0, 8)}</td>
                   </tr>
                 ))}
               </tbody>
