@@ -3,6 +3,8 @@ import { sql } from "drizzle-orm";
 import { countUsers } from "../lib/users/queries";
 import { closeDb, db } from "./client";
 import { as } from "./demo/actor";
+import { seedAssessments } from "./demo/assessments";
+import { seedBriefings } from "./demo/briefings";
 import { seedCatalogue } from "./demo/catalogue";
 import { seedOutbreak } from "./demo/outbreak";
 import { seedPeople } from "./demo/people";
@@ -17,7 +19,9 @@ try {
   if ((await countUsers()) === 0) {
     await seedPeople();
     const measureIds = await seedCatalogue(as("adviserOne"));
-    await seedOutbreak(as("adviserOne"), measureIds);
+    const { outbreakId } = await seedOutbreak(as("adviserOne"), measureIds);
+    const { frozenId } = await seedAssessments(as("adviserOne"), outbreakId);
+    await seedBriefings(frozenId);
     const [entries] = await db.execute(sql`select count(*)::int as n from audit.entry`);
     console.log(`Seeded the demonstration: ${entries?.["n"]} entries in the register.`);
   }

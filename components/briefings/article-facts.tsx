@@ -86,7 +86,7 @@ function Release({ release, content, t }: { release: ArticleRelease; content: Re
         <b>{t("versions.title")}</b>
         <ul>
           {release.versions.map(({ number, publishedAt, href, kind }) => {
-            const name = t(kind === "correction" ? "versions.correction" : "versions.item", { number, day: day(publishedAt) });
+            const name = t(kind === "correction" ? "versions.correction" : "versions.item", { number: String(number), day: day(publishedAt) });
             return <li key={number}>{href ? <a href={href}>{name}</a> : name}</li>;
           })}
         </ul>

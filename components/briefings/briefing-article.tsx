@@ -39,10 +39,10 @@ export async function BriefingArticle({
     <article lang={locale} dir={LOCALES[locale].dir}>
       <h1>{content.title}</h1>
       <p className="pmeta">
-        {t("meta", { illness: capitalise(content.outbreakName, locale), place: content.place, number: content.briefingNumber })}
+        {t("meta", { illness: capitalise(content.outbreakName, locale), place: content.place, number: String(content.briefingNumber) })}
         {" · "}
         {release ? t("released", { day: day(release.publishedAt), time: formatTime(release.publishedAt) }) : t("notReleased")}
-        {release && release.number > 1 ? ` · ${t("version", { number: release.number })}` : null}
+        {release && release.number > 1 ? ` · ${t("version", { number: String(release.number) })}` : null}
       </p>
       {notice ? <Notice notice={notice} locale={readerLocale} foreign={readerLocale !== locale} t={await getTranslations({ locale: readerLocale, namespace: "Article" })} /> : null}
       <div className="pgrid">

@@ -17,7 +17,7 @@ export async function BriefingCard({ release, content, today, locale }: { releas
   const short = content.parts.find(({ part }) => part === "inShort")?.paragraphs.slice(0, 2) ?? [];
   const { measures } = content.schedule;
   const day = (iso: string) => formatDay(iso, locale);
-  const name = release.number > 1 ? t("card.version", { number: content.briefingNumber, version: release.number }) : t("card.briefing", { number: content.briefingNumber });
+  const name = release.number > 1 ? t("card.version", { number: String(content.briefingNumber), version: String(release.number) }) : t("card.briefing", { number: String(content.briefingNumber) });
   return (
     <li>
       <h2 className="h3" {...foreign}>

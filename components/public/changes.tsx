@@ -16,7 +16,7 @@ export async function Changes({ changes, locale }: { changes: Change[]; locale: 
             <time className="mut" dateTime={at}>
               {formatDay(at, locale)}
             </time>
-            <a href={`/${locale}/briefings/${release.slug}`}>{t(`changes.${kind}`, { number: chooseText(release, locale)?.briefingNumber ?? 0 })}</a>
+            <a href={`/${locale}/briefings/${release.slug}`}>{t(`changes.${kind}`, { number: String(chooseText(release, locale)?.briefingNumber ?? 0) })}</a>
           </li>
         ))}
       </ul>

@@ -47,7 +47,7 @@ export function authOptions(): NextAuthOptions {
       {
         id: "email",
         type: "email",
-        name: "E-mail",
+        name: "Email",
         server: "",
         from: settings.MAIL_FROM,
         maxAge: SIGN_IN_MINUTES * 60,
@@ -72,7 +72,7 @@ export function authOptions(): NextAuthOptions {
       },
     },
   };
-  return held;
+  return held as NextAuthOptions;
 }
 
 /** Only our own staff pages are ever a place to go to. */

@@ -43,11 +43,12 @@ export function staffAction<S extends z.ZodType>(
     } catch (error) {
       if (!(error instanceof DomainError)) throw error; // redirects and bugs pass through
       const reasons = error.detail.reasons ?? [];
+      const briefing = await getTranslations("BriefingReasons");
       const has = (key: string) => t.has(`reasons.${key}` as never);
       return submission.reply({
         formErrors: [
           t(`codes.${error.code}`),
-          ...reasons.map((reason) => (has(reason) ? t(`reasons.${reason}` as never, error.detail as never) : reason)),
+          ...reasons.map((reason) => (has(reason) ? t(`reasons.${reason}` as never, error.detail as never) : briefing.has(reason as never) ? briefing(reason as never) : reason)),
         ],
       });
     }

@@ -50,13 +50,13 @@ function stepsOf(chain: ChainStatus, t: Translate, day: (date: Date) => string):
     {
       stage: "assessment",
       level: assessment ? (assessment.frozenAt ? "full" : "half") : "empty",
-      status: assessment ? (assessment.frozenAt ? t("assessmentFrozen", { number: assessment.number, date: day(assessment.frozenAt) }) : t("assessmentWorking", { number: assessment.number })) : t("notStarted"),
+      status: assessment ? (assessment.frozenAt ? t("assessmentFrozen", { number: String(assessment.number), date: day(assessment.frozenAt) }) : t("assessmentWorking", { number: String(assessment.number) })) : t("notStarted"),
       href: assessment ? `/desk/assessments/${assessment.id}` : `/desk/assessments/new?outbreak=${id}`,
     },
     {
       stage: "briefing",
       level: briefing ? (state === "draft" ? "half" : state === "changesAsked" ? "returned" : "full") : "empty",
-      status: briefing ? t("briefingVersion", { number: briefing.number, version: briefing.versionNumber }) : t("notStarted"),
+      status: briefing ? t("briefingVersion", { number: String(briefing.number), version: String(briefing.versionNumber) }) : t("notStarted"),
       href: briefing ? `/desk/briefings/${briefing.id}` : null,
     },
     {

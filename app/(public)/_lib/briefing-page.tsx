@@ -20,7 +20,7 @@ export async function briefingMetadata(release: PublishedRelease, locale: Locale
   const t = await getTranslations({ locale: text.locale, namespace: "Article" });
   return pageMetadata({
     title: text.title,
-    description: t("meta", { illness: capitalise(content.outbreakName, content.locale), place: content.place, number: content.briefingNumber }),
+    description: t("meta", { illness: capitalise(content.outbreakName, content.locale), place: content.place, number: String(content.briefingNumber) }),
     locale,
     path,
     locales: release.texts.map((each) => each.locale),

@@ -49,7 +49,7 @@ export default async function RegisterPage({ searchParams }: { searchParams: Sea
         <Button type="submit">{t("apply")}</Button>
       </form>
       <div className="mt-5">
-        {entries.length === 0 ? null : fault ? <Note tone="bad">{t("broken", { seq: fault.seq })}</Note> : <p className="sm mut">{t("intact", { count: run.length })}</p>}
+        {entries.length === 0 ? null : fault ? <Note tone="bad">{t("broken", { seq: String(fault.seq) })}</Note> : <p className="sm mut">{t("intact", { count: run.length })}</p>}
       </div>
       {entries.length === 0 ? (
         <p className="py-6">{t("empty")}</p>

@@ -51,7 +51,7 @@ export default async function Corrections({ params }: Props) {
                 <b>{article(kind === "corrected" ? "corrected" : "withdrawn", { day: formatDay(at, locale) })}</b> <Said said={said} locale={locale} />
               </p>
               <p className="meta">
-                <span>{words("version", { number: text?.briefingNumber ?? 0, version: release.number })}</span>
+                <span>{words("version", { number: String(text?.briefingNumber ?? 0), version: String(release.number) })}</span>
               </p>
             </li>
           );

@@ -47,7 +47,7 @@ export default async function Releases({ params }: Props) {
                     <a href={`/${locale}/briefings/${release.slug}/v/${release.number}`} {...foreign}>
                       {text?.title}
                     </a>
-                    <small>{words("version", { number: text?.briefingNumber ?? 0, version: release.number })}</small>
+                    <small>{words("version", { number: String(text?.briefingNumber ?? 0), version: String(release.number) })}</small>
                   </th>
                   <td>{t(`states.${standing(release, releases)}`)}</td>
                 </tr>

@@ -1,5 +1,5 @@
 "use client";
-import { type FieldMetadata, getFormProps, useForm, useFormData } from "@conform-to/react";
+import { type FieldMetadata, getFormProps, useForm } from "@conform-to/react";
 import { useFormatter, useTranslations } from "next-intl";
 import { useActionState } from "react";
 import { ErrorSummary } from "@/components/forms/error-summary";
@@ -32,7 +32,7 @@ export function ProfileForm({ facts, populationPersons, readOnly = false }: { fa
   const forms = useTranslations("Forms");
   const [lastResult, action] = useActionState(saveProfileAction, undefined);
   const [form, fields] = useForm<ProfileFacts, string[]>({ id: "profile", lastResult: lastResult ?? null, defaultValue: facts });
-  const typed = useFormData(form.id, (data) => readTyped(data), { fallback: readTyped(null, facts) }) ?? readTyped(null, facts);
+  const typed = readTyped((form.value as Typing | undefined) ?? facts);
   const transmission = fields.transmission.getFieldset();
   const names = {
     "transmission.value": t("value"),
@@ -117,20 +117,21 @@ const figure = (raw: unknown): number => {
   return typeof value === "number" ? value : Number.NaN;
 };
 
-/** The central figures as they stand in the form; before the form is there, those that it starts with. */
-function readTyped(data: FormData | URLSearchParams | null, facts?: ProfileFacts): Typed {
-  const get = (name: string, start: string | undefined) => (data ? data.get(name) : start);
-  const given = get("transmission.given", facts?.transmission.given);
+type Typing = { [K in keyof ProfileFacts]?: ProfileFacts[K] extends Quantity ? Partial<Quantity> : K extends "transmission" ? { given?: string; value?: Partial<Quantity> } : ProfileFacts[K] };
+
+/** The central figures as they stand in the form. */
+function readTyped(facts: Typing): Typed {
+  const given = facts.transmission?.given;
   return {
     given: (TRANSMISSION_WAYS as readonly unknown[]).includes(given) ? (given as TransmissionGiven) : "reproductionNumber",
-    value: figure(get("transmission.value.central", facts?.transmission.value.central)),
-    infectious: figure(get("infectious.central", facts?.infectious.central)),
-    removed: figure(get("removed.central", facts?.removed.central)),
-    infectiousPeriodDays: figure(get("infectiousPeriodDays.central", facts?.infectiousPeriodDays.central)),
-    latentPeriodDays: figure(get("latentPeriodDays.central", facts?.latentPeriodDays.central)),
-    exposed: figure(get("exposed.central", facts?.exposed.central)),
-    latentStage: get("latentStage", facts?.latentStage) === "yes",
-    exposedGiven: get("exposedGiven", facts?.exposedGiven) === "given",
+    value: figure(facts.transmission?.value?.central),
+    infectious: figure(facts.infectious?.central),
+    removed: figure(facts.removed?.central),
+    infectiousPeriodDays: figure(facts.infectiousPeriodDays?.central),
+    latentPeriodDays: figure(facts.latentPeriodDays?.central),
+    exposed: figure(facts.exposed?.central),
+    latentStage: facts.latentStage === "yes",
+    exposedGiven: facts.exposedGiven === "given",
   };
 }
 
