@@ -24,6 +24,9 @@ export type RenderFacts = {
 
 export type RenderText = { locale: Locale; title: string; paragraphs: readonly Paragraph[] };
 
+/** Between these chances of shrinking the 95 % interval of the effective ratio holds 1: nobody can say which way it goes. */
+const UNDECIDED = { from: 0.025, to: 0.975 };
+
 /** Numbers and dates in one language. */
 async function wordsOf(locale: Locale, dayZero: string): Promise<{ words: FigureWords; label: (ref: FigureRef, chosen: string) => string }> {
   const t = await translatorOf(locale, "Figures");
@@ -115,8 +118,7 @@ export async function renderBriefing(frozen: FrozenAssessment, facts: RenderFact
   const paragraphs = text.paragraphs.filter(({ text: raw }) => raw.trim() !== "").map(({ id, part, text: raw }) => ({ id, part, inlines: inlinesOf(raw) }));
   const used = new Set(paragraphs.flatMap(({ inlines }) => inlines.flatMap((inline) => (inline.kind === "figure" ? [inline.ref] : []))));
   const measures = scheduleOf(frozen, facts.packageLetter, locale);
-  const found = frozen.result.packages.find(({ id }) => id === facts.packageLetter);
-  const ratio = found?.uncertainty?.thresholdRatio;
+  const chance = readFigure(frozen.result, "chanceShrinks", facts.packageLetter)?.value ?? null;
   const publicName = outbreak.publicNames[locale] ?? { name: outbreak.name, place: outbreak.place };
   const from = dates.get("from") ?? outbreak.dayZero;
   return {
@@ -139,7 +141,7 @@ export async function renderBriefing(frozen: FrozenAssessment, facts: RenderFact
     people: peopleOf(frozen, facts.packageLetter),
     figures: [...shown.values()].filter(({ ref }) => used.has(ref.ref)).map(({ ref, text: value }) => ({ ref: ref.ref, text: value, label: label(ref, facts.packageLetter), figure: ref.figure, package: ref.package, form: ref.form })),
     roundingNote: partsDisagree(frozen, facts.packageLetter),
-    nearThreshold: ratio ? ratio.low <= 1 && ratio.high >= 1 : (found?.phases.some(({ thresholdRatio }) => Math.abs(thresholdRatio - 1) < 0.02) ?? false),
+    nearThreshold: chance === null ? false : chance > UNDECIDED.from && chance < UNDECIDED.to,
     demonstration: facts.demonstration,
   };
 }

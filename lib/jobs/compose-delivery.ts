@@ -1,9 +1,10 @@
+import { createHash } from "node:crypto";
 import type postgres from "postgres";
 import type { RenderedBriefing } from "../briefings/rendered";
 import { formatDay } from "../i18n/dates";
 import type { Locale } from "../i18n/locales";
-import { composeMessage, returnPathOf, type Sender } from "../mail/compose";
-import { type MailModel, personalise, type WrittenMail } from "../mail/model";
+import { prepareMessage, type Reader, returnPathOf, type Sender } from "../mail/compose";
+import type { MailModel } from "../mail/model";
 import { briefingMail, withdrawalMail } from "../mail/templates/briefing";
 import { type Authority, confirmMail, invitationMail, signInMail } from "../mail/templates/transactional";
 import { writeMail } from "../mail/write-mail";
@@ -15,37 +16,41 @@ import type { Claimed } from "./outbox";
 export type ComposeOptions = { sql: postgres.Sql; sender: Sender; contact: string; demonstration: boolean };
 
 const KEPT = 40;
+type Prepared = (reader: Reader) => Promise<Buffer>;
+const boundaryOf = (key: string): string => createHash("sha256").update(key).digest("hex").slice(0, 32);
 
-/**
- * Writes deliveries as messages. A release is read and rendered once per language; what differs from reader to reader
- * is filled into the finished text, so that fifty thousand mails cost fifty thousand replacements and no rendering.
- */
+/** Writes deliveries as messages. A release is read, rendered and encoded once per language; a reader costs a join. */
 export function deliveryComposer({ sql, sender, contact, demonstration }: ComposeOptions): (row: Claimed) => Promise<Composed> {
   const authority: Authority = { name: sender.authority, contact, demonstration };
-  const written = new Map<string, Promise<WrittenMail>>();
+  const prepared = new Map<string, Promise<Prepared>>();
 
-  function ofRelease(releaseId: string, locale: Locale, kind: "briefing" | "withdrawal"): Promise<WrittenMail> {
+  function ofRelease(releaseId: string, locale: Locale, kind: "briefing" | "withdrawal"): Promise<Prepared> {
     const key = `${releaseId} ${locale} ${kind}`;
-    const kept = written.get(key);
+    const kept = prepared.get(key);
     if (kept) return kept;
-    const made = (kind === "briefing" ? releaseModel : withdrawalModel)(sql, releaseId, locale, sender.base).then(writeMail);
-    made.catch(() => written.delete(key));
-    written.set(key, made);
-    for (const oldest of written.keys()) if (written.size > KEPT) written.delete(oldest);
+    const model = (kind === "briefing" ? releaseModel : withdrawalModel)(sql, releaseId, locale, sender.base);
+    const made = model.then((mail) => prepareMessage(writeMail(mail), { locale, list: true, boundary: boundaryOf(key) }, sender));
+    made.catch(() => prepared.delete(key));
+    prepared.set(key, made);
+    for (const oldest of prepared.keys()) if (prepared.size > KEPT) prepared.delete(oldest);
     return made;
+  }
+
+  async function ofOne(row: Claimed & { kind: "signIn" | "invitation" | "confirmSubscription" }): Promise<Prepared> {
+    const mail = await { signIn: signInMail, invitation: invitationMail, confirmSubscription: confirmMail }[row.kind](row.locale, row.payload, authority);
+    return prepareMessage(writeMail(mail), { locale: row.locale, list: false, boundary: boundaryOf(row.messageId) }, sender);
   }
 
   return async (row) => {
     const returnPath = returnPathOf(row.id, sender.domain);
-    const facts = { to: row.recipient, locale: row.locale, messageId: row.messageId, date: row.createdAt };
+    const reader = { to: row.recipient, messageId: row.messageId, date: row.createdAt };
     if (row.kind !== "briefing" && row.kind !== "withdrawal") {
-      const model = await { signIn: signInMail, invitation: invitationMail, confirmSubscription: confirmMail }[row.kind](row.locale, row.payload, authority);
-      return { returnPath, message: await composeMessage(writeMail(model), { ...facts, list: null }, sender) };
+      const write = await ofOne({ ...row, kind: row.kind });
+      return { returnPath, message: await write({ ...reader, token: "", since: "" }) };
     }
     if (!row.releaseId || !row.subscriptionId || !row.confirmedAt) throw new Error("a delivery to the list names no release or no confirmed subscription");
-    const token = subscriptionToken(row.subscriptionId);
-    const mail = personalise(await ofRelease(row.releaseId, row.locale, row.kind), { token, since: formatDay(row.confirmedAt.toISOString(), row.locale) });
-    return { returnPath, message: await composeMessage(mail, { ...facts, list: { token } }, sender) };
+    const write = await ofRelease(row.releaseId, row.locale, row.kind);
+    return { returnPath, message: await write({ ...reader, token: subscriptionToken(row.subscriptionId), since: formatDay(row.confirmedAt.toISOString(), row.locale) }) };
   };
 }
 

@@ -14,7 +14,7 @@ export function inGroups<T, R>(run: (items: T[]) => Promise<R[]>): (item: T) => 
     waiting = [];
     try {
       const results = await run(group.map(({ item }) => item));
-      group.forEach(({ resolve }, index) => resolve(results[index] as R));
+      for (const [index, { resolve }] of group.entries()) resolve(results[index] as R);
     } catch (error) {
       for (const { reject } of group) reject(error);
     }

@@ -22,32 +22,32 @@ export type Claimed = {
 };
 
 type Sql = postgres.Sql;
-const LIST_KINDS = ["briefing", "withdrawal"];
+type Tx = postgres.TransactionSql;
+
+/** Settings of the dispatcher's own connections. */
+export const OUTBOX_CONNECTION = {
+  application_name: "ebbmark-dispatcher",
+  statement_timeout: 15_000,
+  idle_in_transaction_session_timeout: 15_000,
+  lock_timeout: 5_000,
+  TimeZone: "UTC",
+  // Just after a mailing was queued the planner still believes the table empty, and would read it whole for each claim.
+  enable_bitmapscan: "off",
+  enable_seqscan: "off",
+  jit: "off",
+} as const;
 
 /**
  * Takes up to `limit` deliveries that are due, mail to one person first, and commits them as `sending` with lease and
- * Message-ID before anything is connected. The subscription is share-locked in the same statement: an unsubscribe that
- * has committed is always seen, and one that is under way leaves its deliveries for the next look.
+ * Message-ID before anything is connected.
  */
 export async function claim(sql: Sql, { limit, leaseSeconds, domain }: { limit: number; leaseSeconds: number; domain: string }): Promise<Claimed[]> {
   return sql.begin(async (tx) => {
     const single = await tx<{ id: string }[]>`
-      select id from deliveries d
-      where d.state in ('queued', 'deferred') and d.next_at <= now() and d.kind <> all(${LIST_KINDS})
-      order by d.next_at limit ${limit}
-      for update of d skip locked`;
-    const rest = limit - single.length;
-    const listed =
-      rest === 0
-        ? []
-        : await tx<{ id: string }[]>`
-            select d.id from deliveries d join subscriptions s on s.id = d.subscription_id
-            where d.state in ('queued', 'deferred') and d.next_at <= now() and d.kind = any(${LIST_KINDS})
-              and s.state = 'active' and s.suppressed_at is null
-              and (d.kind <> 'briefing' or not exists (select from release_events e where e.release_id = d.release_id))
-            order by d.next_at limit ${rest}
-            for update of d skip locked for share of s skip locked`;
-    const ids = [...single, ...listed].map(({ id }) => id);
+      select id from deliveries where state in ('queued', 'deferred') and next_at <= now() and release_id is null
+      order by next_at limit ${limit} for update skip locked`;
+    const listed = single.length < limit ? await pickListed(tx, limit - single.length) : [];
+    const ids = [...single.map(({ id }) => id), ...listed];
     if (ids.length === 0) return [];
     const rows = await tx<Claimed[]>`
       with lease as (select gen_random_uuid() as token)
@@ -66,6 +66,29 @@ export async function claim(sql: Sql, { limit, leaseSeconds, domain }: { limit: 
         d.message_id as "messageId", d.lease_token as "leaseToken"`;
     return [...rows];
   }) as Promise<Claimed[]>;
+}
+
+/**
+ * Locks deliveries to the list, and shares their subscriptions until the claim commits: an unsubscribe that has committed
+ * is seen by the second statement, and one that is under way keeps its delivery for the next look. What may not go out
+ * any more is held back at once, so that it never stands in the way of the rest.
+ */
+async function pickListed(tx: Tx, limit: number): Promise<string[]> {
+  const due = await tx<{ id: string; kind: MailKind; releaseId: string; subscriptionId: string | null }[]>`
+    select id, kind, release_id as "releaseId", subscription_id as "subscriptionId" from deliveries
+    where state in ('queued', 'deferred') and next_at <= now() and release_id is not null
+    order by next_at limit ${limit} for update skip locked`;
+  if (due.length === 0) return [];
+  const subscriptionIds = due.flatMap(({ subscriptionId }) => subscriptionId ?? []);
+  const shared = await tx<{ id: string; may: boolean }[]>`
+    select id, state = 'active' and suppressed_at is null as may from subscriptions
+    where id = any(${subscriptionIds}) for share skip locked`;
+  const closed = await tx<{ id: string }[]>`select release_id as id from release_events where release_id = any(${due.map(({ releaseId }) => releaseId)})`;
+  const may = new Map(shared.map((row) => [row.id, row.may]));
+  const over = new Set(closed.map(({ id }) => id));
+  const barred = due.filter(({ kind, releaseId, subscriptionId }) => subscriptionId === null || may.get(subscriptionId) === false || (kind === "briefing" && over.has(releaseId)));
+  if (barred.length > 0) await tx`update deliveries set state = 'suppressed', finished_at = now() where id = any(${barred.map(({ id }) => id)})`;
+  return due.filter((row) => !barred.includes(row) && row.subscriptionId !== null && may.get(row.subscriptionId) === true).map(({ id }) => id);
 }
 
 /** Notes that the last bytes of these may go out from now on. @returns those whose lease still holds */
@@ -87,7 +110,7 @@ export type Settled = { id: string; leaseToken: string; subscriptionId: string |
  */
 export async function writeSettled(sql: Sql, results: readonly Settled[]): Promise<Set<string>> {
   const records = results.map(({ id, leaseToken, settlement: { state, delayMs, reply, lost } }) => ({ id, token: leaseToken, state, delay: delayMs, reply, lost }));
-  const write = (on: Sql | postgres.TransactionSql) => on<{ id: string }[]>`
+  const write = (on: Sql | Tx) => on<{ id: string }[]>`
     update deliveries d
     set state = r.state, reply = r.reply, lease_token = null, lease_until = null, ending_at = null,
         unknown_at = case when r.lost then coalesce(d.unknown_at, now()) else d.unknown_at end,
@@ -112,7 +135,7 @@ export async function writeSettled(sql: Sql, results: readonly Settled[]): Promi
 }
 
 /** @param gone addresses that don't exist; the others of `concerned` are suspended if this was their second refusal */
-async function suspend(tx: postgres.TransactionSql, concerned: string[], gone: string[]): Promise<void> {
+async function suspend(tx: Tx, concerned: string[], gone: string[]): Promise<void> {
   const suspended = await tx<{ id: string }[]>`
     update subscriptions s set suppressed_at = now()
     where s.suppressed_at is null and s.id = any(${concerned})
@@ -166,7 +189,7 @@ export async function release(sql: Sql, rows: readonly { id: string; leaseToken:
 export async function holdBack(sql: Sql): Promise<number> {
   const held = await sql`
     update deliveries d set state = 'suppressed', finished_at = now()
-    where d.state in ('queued', 'deferred') and d.kind = any(${LIST_KINDS}) and (
+    where d.state in ('queued', 'deferred') and d.release_id is not null and (
       not exists (select from subscriptions s where s.id = d.subscription_id and s.state = 'active' and s.suppressed_at is null)
       or (d.kind = 'briefing' and exists (select from release_events e where e.release_id = d.release_id)))`;
   return held.count;

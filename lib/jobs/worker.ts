@@ -10,6 +10,7 @@ import { deliveryComposer } from "./compose-delivery";
 import { startDispatcher } from "./dispatcher";
 import { startHousekeeping } from "./housekeeping";
 import { faultOf, jsonLog as log } from "./log";
+import { OUTBOX_CONNECTION } from "./outbox";
 
 const settings = env();
 
@@ -17,7 +18,7 @@ const settings = env();
 const sql = postgres(settings.DATABASE_WORKER_URL ?? settings.DATABASE_URL, {
   max: 3,
   connect_timeout: 5,
-  connection: { application_name: "ebbmark-dispatcher", statement_timeout: 15_000, idle_in_transaction_session_timeout: 15_000, lock_timeout: 5_000, TimeZone: "UTC" },
+  connection: OUTBOX_CONNECTION,
   onnotice: () => {},
 });
 

@@ -35,13 +35,7 @@ export const TOKEN = "\ue000t\ue001";
 export const SINCE = "\ue000s\ue001";
 
 /** Fills in what differs from reader to reader. @param token base64url, so it needs no escaping anywhere */
-export function personalise(mail: WrittenMail, reader: { token: string; since: string }): WrittenMail {
-  const fill = (text: string, since: string) => text.replaceAll(TOKEN, reader.token).replaceAll(SINCE, since);
-  return { subject: mail.subject, text: fill(mail.text, reader.since), html: fill(mail.html, escapeHtml(reader.since)) };
-}
-
-const ESCAPES: Record<string, string> = { "&": "&amp;", "<": "&lt;", ">": "&gt;", '"': "&quot;" };
-const escapeHtml = (text: string): string => text.replace(/[&<>"]/g, (sign) => ESCAPES[sign] ?? sign);
+export const fillSlots = (text: string, { token, since }: { token: string; since: string }): string => text.replaceAll(TOKEN, token).replaceAll(SINCE, since);
 
 /** One line of clean text: composed, without control characters, at most `max` characters. */
 export function cleanLine(text: string, max: number): string {

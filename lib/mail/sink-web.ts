@@ -77,13 +77,13 @@ async function listPage(store: SinkStore, query: URLSearchParams): Promise<Reply
   const found = matching(store, to);
   const shown = found.slice(Math.max(0, found.length - page * PER_PAGE), found.length - (page - 1) * PER_PAGE).reverse();
   const rows = await Promise.all(
-    shown.map(async (entry) => `<tr><td>${escape(entry.at.slice(0, 19).replace("T", " "))}</td><td>${escape(entry.to)}</td><td><a href="/messages/${entry.id}">${escape(await subjectOf(store, entry)) || "(no subject)"}</a></td></tr>`),
+    shown.map(async (entry) => `<tr><td>${escaped(entry.at.slice(0, 19).replace("T", " "))}</td><td>${escaped(entry.to)}</td><td><a href="/messages/${entry.id}">${escaped(await subjectOf(store, entry)) || "(no subject)"}</a></td></tr>`),
   );
   const link = (number: number, words: string) => `<a href="/?${new URLSearchParams({ ...(to ? { to } : {}), page: String(number) })}">${words}</a> `;
   return html(
     "Mail sink",
     `<h1>Mail that was “sent”</h1><p>This is the demonstration’s own mail server. It keeps mail and sends nothing on. ${found.length} of ${store.entries().length} shown by address.</p>
-<form><label>To <input name="to" value="${escape(to)}"></label> <button>Search</button></form>
+<form><label>To <input name="to" value="${escaped(to)}"></label> <button>Search</button></form>
 ${rows.length === 0 ? "<p>Nothing here yet.</p>" : `<table><thead><tr><th scope="col">Time (UTC)</th><th scope="col">To</th><th scope="col">Subject</th></tr></thead><tbody>${rows.join("")}</tbody></table>`}
 <p>${page > 1 ? link(page - 1, "Newer") : ""}${found.length > page * PER_PAGE ? link(page + 1, "Older") : ""}</p>`,
   );
@@ -94,16 +94,16 @@ async function messagePage(entry: SinkEntry, raw: Buffer): Promise<Reply> {
   const head = raw.subarray(0, Math.max(0, raw.indexOf("\r\n\r\n"))).toString("utf8");
   return html(
     mail.subject,
-    `<p><a href="/">All mail</a></p><h1 dir="auto">${escape(mail.subject)}</h1><p>To ${escape(entry.to)}, ${escape(entry.at.slice(0, 19).replace("T", " "))} UTC, ${entry.size} bytes</p>
+    `<p><a href="/">All mail</a></p><h1 dir="auto">${escaped(mail.subject)}</h1><p>To ${escaped(entry.to)}, ${escaped(entry.at.slice(0, 19).replace("T", " "))} UTC, ${entry.size} bytes</p>
 ${mail.html ? `<iframe title="The mail as HTML" sandbox="allow-popups allow-popups-to-escape-sandbox" src="/messages/${entry.id}/html"></iframe>` : ""}
-<details${mail.html ? "" : " open"}><summary>As text</summary><pre dir="auto">${escape(mail.text)}</pre></details>
-<details><summary>Header fields</summary><pre>${escape(head)}</pre></details>
+<details${mail.html ? "" : " open"}><summary>As text</summary><pre dir="auto">${escaped(mail.text)}</pre></details>
+<details><summary>Header fields</summary><pre>${escaped(head)}</pre></details>
 <p><a href="/messages/${entry.id}/raw">The whole source</a></p>`,
   );
 }
 
 const html = (title: string, body: string): Reply => ({
-  body: `<!doctype html><html lang="en"><head><meta charset="utf-8"><meta name="viewport" content="width=device-width,initial-scale=1"><title>${escape(title)}</title><style>${STYLE}</style></head><body>${body}</body></html>`,
+  body: `<!doctype html><html lang="en"><head><meta charset="utf-8"><meta name="viewport" content="width=device-width,initial-scale=1"><title>${escaped(title)}</title><style>${STYLE}</style></head><body>${body}</body></html>`,
 });
 const SIGNS: Record<string, string> = { "&": "&amp;", "<": "&lt;", ">": "&gt;", '"': "&quot;" };
-const escape = (text: string): string => text.replace(/[&<>"]/g, (sign) => SIGNS[sign] ?? sign);
+const escaped = (text: string): string => text.replace(/[&<>"]/g, (sign) => SIGNS[sign] ?? sign);

@@ -51,7 +51,7 @@ export default async function AccessLayout({ children }: { children: ReactNode }
         </div>
         <div className="relative hidden overflow-hidden xl:block" aria-hidden="true">
           <p className="absolute start-0 top-[150px] max-w-[27rem] text-27 leading-[38px] font-light">{t("motto")}</p>
-          <svg viewBox="0 0 800 900" width="800" height="900" preserveAspectRatio="xMinYMin slice" className="h-full min-h-[900px] w-full">
+          <svg aria-hidden="true" viewBox="0 0 800 900" width="800" height="900" preserveAspectRatio="xMinYMin slice" className="h-full min-h-[900px] w-full">
             <path d="M0,392H800" stroke="var(--ink)" strokeWidth="2" />
             {WATER.map((y, i) => (
               <path key={y} d={`M0,${y}H800`} stroke="var(--water)" opacity={0.95 - i * 0.037} />

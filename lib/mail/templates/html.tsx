@@ -28,7 +28,7 @@ const plainTable = { role: "presentation", width: "100%", cellSpacing: 0, cellPa
 /** The HTML part: tables for layout, no picture, no script, nothing from elsewhere. */
 export function toHtml(mail: MailModel): string {
   const { dir } = LOCALES[mail.locale];
-  return `<!doctype html>${renderToStaticMarkup(
+  const markup = renderToStaticMarkup(
     <html lang={mail.locale} dir={dir}>
       <head>
         <meta charSet="utf-8" />
@@ -36,6 +36,7 @@ export function toHtml(mail: MailModel): string {
         <meta name="color-scheme" content="light dark" />
         <meta name="supported-color-schemes" content="light dark" />
         <title>{mail.subject}</title>
+        {/* biome-ignore lint/security/noDangerouslySetInnerHtml: a constant of this file; React would escape its signs. */}
         <style dangerouslySetInnerHTML={{ __html: DARK }} />
       </head>
       <body className="m-paper" style={{ margin: 0, padding: 0, backgroundColor: COLOUR.paper }}>
@@ -57,7 +58,9 @@ export function toHtml(mail: MailModel): string {
         </div>
       </body>
     </html>,
-  )}`;
+  );
+  // Paragraphs on lines of their own: what differs between readers then stands in a line apart (compose.ts).
+  return `<!doctype html>${markup.replaceAll("<p ", "\n<p ").replaceAll("</p>", "</p>\n")}`;
 }
 
 function Sheet({ mail }: { mail: MailModel }) {

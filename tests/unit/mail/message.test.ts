@@ -1,9 +1,10 @@
 import { createHash, createVerify, generateKeyPairSync } from "node:crypto";
+import fc from "fast-check";
 import { simpleParser } from "mailparser";
 import { describe, expect, test } from "vitest";
-import { LOCALE_CODES } from "@/lib/i18n/locales";
-import { composeMessage, messageIdOf, returnPathOf, type Sender } from "@/lib/mail/compose";
-import { cleanLine, personalise } from "@/lib/mail/model";
+import { LOCALE_CODES, type Locale } from "@/lib/i18n/locales";
+import { type MailFacts, prepareMessage, type Reader, returnPathOf, type Sender } from "@/lib/mail/compose";
+import { cleanLine, fillSlots, type WrittenMail } from "@/lib/mail/model";
 import { briefingMail } from "@/lib/mail/templates/briefing";
 import { writeMail } from "@/lib/mail/write-mail";
 import { rendered } from "../../fixtures/releases";
@@ -11,14 +12,16 @@ import { rendered } from "../../fixtures/releases";
 const token = "Zm9v".repeat(16);
 const id = "6f0f4a64-7f1c-4d11-9d51-0f6f3a1c2b3d";
 const sender: Sender = { from: "Kelmaren District Health Office <updates@news.example.org>", replyTo: "ask@example.org", domain: "news.example.org", base: "https://health.example.org", authority: "Kelmaren District Health Office", dkim: null };
-const facts = { to: "reader@example.org", messageId: messageIdOf(id, "news.example.org"), date: new Date("2027-03-02T16:00:00Z"), list: { token } };
+const reader: Reader = { to: "reader@example.org", messageId: `<${id}@news.example.org>`, date: new Date("2027-03-02T16:00:00Z"), token, since: "22 & <b>" };
+const facts: MailFacts = { locale: "en", list: true, boundary: "0123456789abcdef" };
+const compose = async (mail: WrittenMail, from: Sender = sender, over: Partial<MailFacts> = {}, to: Partial<Reader> = {}) => (await prepareMessage(mail, { ...facts, ...over }, from))({ ...reader, ...to });
 const { privateKey, publicKey } = generateKeyPairSync("rsa", { modulusLength: 2048, privateKeyEncoding: { type: "pkcs8", format: "pem" }, publicKeyEncoding: { type: "spki", format: "pem" } });
 const signing = { ...sender, dkim: { domain: "news.example.org", selector: "s2027", privateKey } };
 
-const written = async (locale: (typeof LOCALE_CODES)[number]) =>
-  personalise(writeMail(await briefingMail({ content: rendered(locale), release: { number: 1, kind: "first", publishedAt: "2027-03-02T16:00:00Z" }, correction: null, before: null, base: sender.base })), { token, since: "22" });
+const written = async (locale: Locale) =>
+  writeMail(await briefingMail({ content: rendered(locale), release: { number: 1, kind: "first", publishedAt: "2027-03-02T16:00:00Z" }, correction: null, before: null, base: sender.base }));
 
-const messages = await Promise.all(LOCALE_CODES.map(async (locale) => ({ locale, raw: await composeMessage(await written(locale), { ...facts, locale }, signing) })));
+const messages = await Promise.all(LOCALE_CODES.map(async (locale) => ({ locale, raw: await compose(await written(locale), signing, { locale }) })));
 
 type Field = { name: string; value: string; source: string };
 /** Fields of a header, unfolded, as they stand in the bytes. */
@@ -89,8 +92,8 @@ describe.each(messages)("$locale: the bytes of a briefing", ({ locale, raw }) =>
   test("another program reads both parts as they were written", async () => {
     const mail = await simpleParser(raw, { skipTextToHtml: true });
     const wanted = await written(locale);
-    expect(mail.text?.trim()).toBe(wanted.text.trim());
-    expect(String(mail.html).trim()).toBe(wanted.html.trim());
+    expect(mail.text?.trim()).toBe(fillSlots(wanted.text, { token, since: "22 & <b>" }).trim());
+    expect(String(mail.html).trim()).toBe(fillSlots(wanted.html, { token, since: "22 &amp; &lt;b&gt;" }).trim());
     expect(only(fields, "content-type")).toMatch(/^multipart\/alternative/);
     const order = [...raw.toString("latin1").matchAll(/^Content-Type: (text\/\w+); charset=utf-8/gm)].map(([, type]) => type);
     expect(order).toEqual(["text/plain", "text/html"]);
@@ -108,7 +111,7 @@ describe.each(messages)("$locale: the bytes of a briefing", ({ locale, raw }) =>
   });
 
   test("is the same, byte for byte, when it is written again", async () => {
-    expect((await composeMessage(await written(locale), { ...facts, locale }, signing)).equals(raw)).toBe(true);
+    expect((await compose(await written(locale), signing, { locale })).equals(raw)).toBe(true);
   });
 });
 
@@ -149,34 +152,52 @@ describe("what must not get into a message", () => {
     expect(cleanLine("🦠".repeat(150), 200)).not.toMatch(/[\ud800-\udbff](?![\udc00-\udfff])/);
   });
 
-  test("neither address nor subject nor authority can add a field or a recipient", async () => {
-    const raw = await composeMessage({ subject: nasty, text: "x", html: "<p>x</p>" }, { ...facts, locale: "en", to: "reader@example.org\r\nBcc: victim@example.org" }, { ...sender, authority: 'A "quoted"\r\nBcc: x@example.org' });
+  test("neither subject nor authority can add a field or a recipient", async () => {
+    const raw = await compose({ subject: cleanLine(nasty, 200), text: "x", html: "<p>x</p>" }, { ...sender, authority: 'A "quoted"\r\nBcc: x@example.org' });
     const { fields } = fieldsOf(raw);
     expect(fields.some(({ name }) => /bcc/i.test(name))).toBe(false);
     only(fields, "subject");
-    only(fields, "to");
+  });
+
+  test.each(["reader@example.org\r\nBcc: victim@example.org", "a@example.org, b@example.org", "<a@example.org>", "a b@example.org", '"a"@example.org', "ä@example.org", "@example.org", "a@"])("the address %j is refused", async (to) => {
+    await expect(compose(await written("en"), sender, {}, { to })).rejects.toThrow("header");
   });
 
   test("a dot on a line of its own, in any line ending, ends nothing", async () => {
     const text = "a\r.\r\nb\n.\r\nc\r\n.\nd\r.\re";
-    const raw = await composeMessage({ subject: "s", text, html: `<p>${text}</p>` }, { ...facts, locale: "en" }, sender);
+    const raw = await compose({ subject: "s", text, html: `<p>${text}</p>` });
     expect(raw.toString("latin1")).not.toMatch(/\r(?!\n)|(?<!\r)\n/);
+    expect((await simpleParser(raw, { skipTextToHtml: true })).text?.trim()).toBe("a\n.\nb\n.\nc\n.\nd\n.\ne");
+  });
+
+  test("any text comes out as it went in", async () => {
+    const anyLine = fc.string({ unit: "grapheme", maxLength: 300 }).map((line) => line.replace(/[\p{Cc}\p{Cs}\ue000\ue001]/gu, ""));
+    await fc.assert(
+      fc.asyncProperty(fc.array(anyLine, { maxLength: 6 }), async (lines) => {
+        const text = lines.join("\n");
+        const raw = await compose({ subject: "s", text: `[${text}]`, html: `<p>${text}</p>` });
+        for (const line of raw.toString("latin1").split("\r\n")) expect(line.length).toBeLessThanOrEqual(160);
+        expect((await simpleParser(raw, { skipTextToHtml: true })).text?.trim()).toBe(`[${text}]`);
+      }),
+      { numRuns: 200 },
+    );
   });
 
   test("mail for one person has no list fields, but says that a machine sent it", async () => {
-    const raw = await composeMessage({ subject: "s", text: "x", html: "<p>x</p>" }, { ...facts, locale: "en", list: null }, sender);
-    const { fields } = fieldsOf(raw);
+    const { fields } = fieldsOf(await compose({ subject: "s", text: "x", html: "<p>x</p>" }, sender, { list: false }));
     expect(fields.filter(({ name }) => /^list-/i.test(name))).toEqual([]);
     expect(only(fields, "auto-submitted")).toBe("auto-generated");
   });
 
-  test("an authority whose name isn't ASCII has its List-Id without a phrase", async () => {
-    const raw = await composeMessage(await written("uk"), { ...facts, locale: "uk" }, { ...sender, authority: "Управління здоров’я" });
+  test("an authority whose name isn't ASCII has its List-Id without a phrase, and its name encoded", async () => {
+    const authority = "Управління здоров’я";
+    const raw = await compose(await written("uk"), { ...sender, authority, from: `${authority} <updates@news.example.org>` }, { locale: "uk" });
     expect(only(fieldsOf(raw).fields, "list-id")).toBe("<briefings-uk.news.example.org>");
+    expect((await simpleParser(raw)).from?.value).toEqual([{ name: authority, address: "updates@news.example.org" }]);
   });
 
   test("a key that can't sign is an error, not an unsigned mail", async () => {
-    await expect(composeMessage(await written("en"), { ...facts, locale: "en" }, { ...sender, dkim: { domain: "news.example.org", selector: "s", privateKey: "no key" } })).rejects.toThrow("DKIM");
+    await expect(compose(await written("en"), { ...sender, dkim: { domain: "news.example.org", selector: "s", privateKey: "no key" } })).rejects.toThrow("DKIM");
   });
 
   test("each message has a return path of its own", () => {

@@ -1,7 +1,7 @@
 import { describe, expect, test } from "vitest";
 import { formatDay } from "@/lib/i18n/dates";
 import { LOCALE_CODES, LOCALES, type Locale } from "@/lib/i18n/locales";
-import { personalise, SINCE, TOKEN, type WrittenMail } from "@/lib/mail/model";
+import { fillSlots, SINCE, TOKEN, type WrittenMail } from "@/lib/mail/model";
 import { briefingMail, figureRows, withdrawalMail } from "@/lib/mail/templates/briefing";
 import { confirmMail, invitationMail, signInMail } from "@/lib/mail/templates/transactional";
 import { writeMail } from "@/lib/mail/write-mail";
@@ -37,7 +37,9 @@ async function mailOf(kind: Kind, locale: Locale, correctionLang: Locale = local
         });
     }
   };
-  return personalise(writeMail(await written()), { token, since: formatDay("2027-02-22", locale) });
+  const { subject, text, html } = writeMail(await written());
+  const own = { token, since: formatDay("2027-02-22", locale) };
+  return { subject, text: fillSlots(text, own), html: fillSlots(html, own) };
 }
 
 const decoded = (html: string) => html.replaceAll("&lt;", "<").replaceAll("&gt;", ">").replaceAll("&quot;", '"').replaceAll("&#x27;", "'").replaceAll("&amp;", "&");

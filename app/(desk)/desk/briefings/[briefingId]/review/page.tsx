@@ -87,8 +87,8 @@ export default async function ReviewPage({ params, searchParams }: Props) {
                 ) : (
                   <p className="sm mut">{t("noChanges")}</p>
                 )}
-                <Figures />
-                <Measures />
+                {await figuresTable()}
+                {measuresTable()}
               </div>
             </div>
             {inReview && can(actor.role, "briefing:review") && !own ? (
@@ -119,7 +119,7 @@ export default async function ReviewPage({ params, searchParams }: Props) {
     </>
   );
 
-  async function Figures() {
+  async function figuresTable() {
     const state = await recompute(whole);
     return (
       <section>
@@ -170,7 +170,7 @@ export default async function ReviewPage({ params, searchParams }: Props) {
     );
   }
 
-  function Measures() {
+  function measuresTable() {
     const decided = frozen.context.packages.find(({ letter }) => letter === row.packageLetter);
     return (
       <section>
