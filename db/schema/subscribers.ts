@@ -72,6 +72,8 @@ export const deliveries = pgTable(
   (t) => [
     uniqueIndex("deliveries_once").on(t.releaseId, t.subscriptionId, t.kind).where(sql`${t.releaseId} is not null`),
     index("deliveries_due").on(t.nextAt).where(sql`${t.state} in ('queued','deferred')`),
+    // Mail to one person is looked for first, also behind fifty thousand briefings.
+    index("deliveries_due_single").on(t.nextAt).where(sql`${t.state} in ('queued','deferred') and ${t.releaseId} is null`),
     index("deliveries_leased").on(t.leaseUntil).where(sql`${t.state} = 'sending'`),
     index("deliveries_release").on(t.releaseId, t.state),
     check(

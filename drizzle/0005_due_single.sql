@@ -1,0 +1,1 @@
+CREATE INDEX "deliveries_due_single" ON "deliveries" USING btree ("next_at") WHERE "deliveries"."state" in ('queued','deferred') and "deliveries"."release_id" is null;
