@@ -60,12 +60,12 @@ export const SaveProfileInput = z
     transmission,
     infectiousPeriodDays: quantityIn(period("Infectious period")),
     latentStage: z.enum(["yes", "no"], "Latent stage: choose yes or no."),
-    latentPeriodDays: z.unknown(),
+    latentPeriodDays: z.unknown().optional(),
     infectionFatalityPercent: quantityIn({ label: "Infection fatality", min: 0, max: 100, unit: "%" }),
     infectious: quantityIn(persons("Infectious on day 0")),
     removed: quantityIn(persons("Removed or immune before day 0")),
     exposedGiven: z.enum(["growth", "given"], "Latent on day 0: choose one of the two ways."),
-    exposed: z.unknown(),
+    exposed: z.unknown().optional(),
   })
   .transform(({ latentPeriodDays, exposed, ...rest }, context) => {
     const read = <T extends z.ZodType>(schema: T, value: unknown, path: string): z.output<T> | null => {

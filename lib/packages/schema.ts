@@ -15,9 +15,9 @@ const line = z
   .object({
     measureId: z.uuid(),
     included: z.preprocess((raw) => raw === "on" || raw === true, z.boolean()),
-    uptakePercent: z.unknown(),
-    from: z.unknown(),
-    until: z.unknown(),
+    uptakePercent: z.unknown().optional(),
+    from: z.unknown().optional(),
+    until: z.unknown().optional(),
     never: z.preprocess((raw) => raw === "on" || raw === true, z.boolean()),
   })
   .transform((typed, context) => {
