@@ -3,10 +3,16 @@ import { simpleParser } from "mailparser";
 import type { SinkEntry, SinkStore } from "./sink-store";
 
 const PER_PAGE = 50;
-const STYLE = `:root{color-scheme:light dark}body{font:15px/1.6 system-ui,sans-serif;max-width:64rem;margin:2rem auto;padding:0 1rem}
-table{border-collapse:collapse;width:100%}th,td{text-align:start;padding:.4rem .8rem .4rem 0;border-bottom:1px solid #8884;vertical-align:top}
-iframe{width:100%;height:52rem;border:1px solid #8888;margin-top:1rem}pre{white-space:pre-wrap;overflow-wrap:anywhere;font-size:13px}
-h1{font-size:1.5rem}input{font:inherit;padding:.4rem;min-width:18rem}button{font:inherit;padding:.4rem 1rem}summary{cursor:pointer;padding:.5rem 0}`;
+const STYLE = `:root{color-scheme:light dark;--paper:#f2f4ef;--sheet:#fcfdfa;--ink:#21241f;--soft:#4a4f47;--hair:#d2d7cc;--rule:#7f877a;--tide:#175b56;--on:#fffcf5}
+@media (prefers-color-scheme:dark){:root{--paper:#191b18;--sheet:#222520;--ink:#ecefe8;--soft:#c4cabe;--hair:#3d4238;--rule:#7f877a;--tide:#8acbbc;--on:#14211e}}
+body{font:15px/24px "Noto Sans",system-ui,sans-serif;background:var(--paper);color:var(--ink);max-width:66rem;margin:32px auto;padding:0 20px}
+a{color:var(--tide)}h1{font-size:27px;line-height:36px;font-weight:600;margin:0 0 8px}p{margin:0 0 16px}.soft,th{color:var(--soft)}
+table{border-collapse:collapse;width:100%;border-top:2px solid var(--ink);margin:16px 0}th,td{text-align:start;padding:8px 16px 8px 0;border-bottom:1px solid var(--hair);vertical-align:baseline;overflow-wrap:anywhere}
+th,td:first-child{font-size:13px;white-space:nowrap;font-weight:400}td:first-child{font-variant-numeric:tabular-nums;color:var(--soft)}
+iframe{width:100%;height:52rem;border:1px solid var(--hair);background:var(--sheet)}pre{white-space:pre-wrap;overflow-wrap:anywhere;font-size:13px;line-height:20px}
+label{font-weight:600}input{font:inherit;color:inherit;background:var(--sheet);border:1px solid var(--rule);border-radius:2px;padding:8px 12px;min-width:16rem;margin-inline-start:8px}
+button{font:inherit;font-weight:600;color:var(--on);background:var(--tide);border:0;border-radius:2px;padding:9px 18px}summary{cursor:pointer;padding:8px 0}
+a:focus-visible,input:focus-visible,button:focus-visible,summary:focus-visible{outline:2px solid var(--tide);outline-offset:2px}`;
 const POLICY = "default-src 'none'; style-src 'unsafe-inline'; frame-src 'self'; form-action 'self'; base-uri 'none'; frame-ancestors 'none'";
 // Nothing in a mail may run or load anything; its links open in a window of their own.
 const MAIL_POLICY = "sandbox allow-popups allow-popups-to-escape-sandbox; default-src 'none'; style-src 'unsafe-inline'; frame-ancestors 'self'";
@@ -82,7 +88,7 @@ async function listPage(store: SinkStore, query: URLSearchParams): Promise<Reply
   const link = (number: number, words: string) => `<a href="/?${new URLSearchParams({ ...(to ? { to } : {}), page: String(number) })}">${words}</a> `;
   return html(
     "Mail sink",
-    `<h1>Mail that was “sent”</h1><p>This is the demonstration’s own mail server. It keeps mail and sends nothing on. ${found.length} of ${store.entries().length} shown by address.</p>
+    `<h1>Mail that was “sent”</h1><p>This is the demonstration’s own mail server. It keeps mail and sends nothing on. ${to ? `${found.length} of ${store.entries().length} mails go to this address.` : `${found.length} mails.`}</p>
 <form><label>To <input name="to" value="${escaped(to)}"></label> <button>Search</button></form>
 ${rows.length === 0 ? "<p>Nothing here yet.</p>" : `<table><thead><tr><th scope="col">Time (UTC)</th><th scope="col">To</th><th scope="col">Subject</th></tr></thead><tbody>${rows.join("")}</tbody></table>`}
 <p>${page > 1 ? link(page - 1, "Newer") : ""}${found.length > page * PER_PAGE ? link(page + 1, "Older") : ""}</p>`,

@@ -1,3 +1,4 @@
+import net from "node:net";
 import { eq, sql as q } from "drizzle-orm";
 import { afterAll, afterEach, beforeAll, describe, expect, test } from "vitest";
 import { closeDb, db } from "@/db/client";
@@ -275,10 +276,22 @@ describe("results and leases", () => {
     await db.delete(deliveries).where(eq(deliveries.releaseId, routine.id));
   });
 
-  test("every attempt that a server saw is counted: nothing is tried again in secret", async () => {
-    const { row } = await meet("drop-at-rcpt");
-    expect(row.attempts).toBe(1);
+  test("every connection that a server saw is an attempt that is counted: nothing is tried again in secret", async () => {
+    let connections = 0;
+    const mute = net.createServer((socket) => {
+      connections += 1;
+      socket.end();
+    });
+    await new Promise<void>((resolve) => {
+      mute.listen(0, "127.0.0.1", resolve);
+    });
+    const [person] = await subscribers(1);
+    if (!person) throw new Error("no subscriber was made");
+    await queue(routine.id, [person]);
+    start({ port: (mute.address() as net.AddressInfo).port });
+    await until(async () => (await rowOf(person.id)).state === "deferred");
     await new Promise((resolve) => setTimeout(resolve, 1_500));
-    expect((await rowOf(row.subscriptionId ?? "")).attempts).toBe(1);
+    expect([connections, (await rowOf(person.id)).attempts]).toEqual([1, 1]);
+    mute.close();
   });
 });

@@ -30,6 +30,7 @@ export function toHtml(mail: MailModel): string {
   const { dir } = LOCALES[mail.locale];
   const markup = renderToStaticMarkup(
     <html lang={mail.locale} dir={dir}>
+      {/* biome-ignore lint/style/noHeadElement: a mail is no page of the site */}
       <head>
         <meta charSet="utf-8" />
         <meta name="viewport" content="width=device-width, initial-scale=1" />
