@@ -10,6 +10,7 @@ import { can } from "@/lib/auth/permissions";
 import { listNewest, listTasks, type Task } from "@/lib/briefings/tasks";
 import { listOutbreaks } from "@/lib/outbreaks/queries";
 import { levelOf } from "./briefings/_level";
+import { ScrollFrame } from "@/components/ui/scroll-frame";
 
 export const metadata: Metadata = { title: "Desk" };
 
@@ -59,7 +60,7 @@ export default async function DeskHome() {
         {newest.length === 0 ? (
           <p className="mut">{t("noBriefings")}</p>
         ) : (
-          <div className="overflow-x-auto">
+          <ScrollFrame label={t("briefings")}>
             <table className="head">
               <thead>
                 <tr>
@@ -89,7 +90,7 @@ export default async function DeskHome() {
                 ))}
               </tbody>
             </table>
-          </div>
+          </ScrollFrame>
         )}
       </Section>
       {entries.length > 0 ? (

@@ -8,6 +8,7 @@ import { StateMark } from "@/components/ui/marks";
 import { can } from "@/lib/auth/permissions";
 import { listBriefings } from "@/lib/briefings/queries";
 import { levelOf } from "./_level";
+import { ScrollFrame } from "@/components/ui/scroll-frame";
 
 export const metadata: Metadata = { title: "Briefings" };
 
@@ -27,7 +28,7 @@ export default async function BriefingsPage() {
           {t("emptyText")}
         </EmptyState>
       ) : (
-        <div className="mt-6 overflow-x-auto">
+        <ScrollFrame label={t("title")} className="mt-6">
           <table className="head">
             <thead>
               <tr>
@@ -62,7 +63,7 @@ export default async function BriefingsPage() {
               ))}
             </tbody>
           </table>
-        </div>
+        </ScrollFrame>
       )}
     </main>
   );

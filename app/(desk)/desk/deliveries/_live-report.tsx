@@ -6,6 +6,7 @@ import { useState } from "react";
 import { Section } from "@/components/desk/page-parts";
 import { CheckMark } from "@/components/ui/marks";
 import { ALARMS, type Counts, type DeliveryReport } from "@/lib/deliveries/report";
+import { ScrollFrame } from "@/components/ui/scroll-frame";
 
 const POLL_MS = 3_000;
 const COLUMNS = ["waiting", "accepted", "twice", "rejected", "suppressed", "unknown"] as const satisfies readonly (keyof Counts)[];
@@ -88,7 +89,7 @@ function CountTable({ caption, first, rows }: { caption: string; first: string; 
   const t = useTranslations("Deliveries.states");
   const format = useFormatter();
   return (
-    <div className="overflow-x-auto">
+    <ScrollFrame label={caption}>
       <table className="head min-w-[720px] table-fixed">
         <caption className="sr-only">{caption}</caption>
         <thead>
@@ -116,6 +117,6 @@ function CountTable({ caption, first, rows }: { caption: string; first: string; 
           ))}
         </tbody>
       </table>
-    </div>
+    </ScrollFrame>
   );
 }

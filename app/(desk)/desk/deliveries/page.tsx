@@ -5,6 +5,7 @@ import { EmptyState, PageHead, Section } from "@/components/desk/page-parts";
 import { getDeliveryReport, listUnknown } from "@/lib/deliveries/queries";
 import { LOCALES } from "@/lib/i18n/locales";
 import { LiveReport } from "./_live-report";
+import { ScrollFrame } from "@/components/ui/scroll-frame";
 
 export const metadata: Metadata = { title: "Deliveries" };
 
@@ -25,7 +26,7 @@ export default async function DeliveriesPage() {
         {unknown.length === 0 ? (
           <EmptyState title={t("unknown.none")} />
         ) : (
-          <div className="mt-4 overflow-x-auto">
+          <ScrollFrame label={t("title")} className="mt-4">
             <table className="head min-w-[720px]">
               <thead>
                 <tr>
@@ -48,7 +49,7 @@ export default async function DeliveriesPage() {
                 ))}
               </tbody>
             </table>
-          </div>
+          </ScrollFrame>
         )}
       </Section>
     </main>

@@ -7,6 +7,7 @@ import { ButtonLink } from "@/components/ui/button";
 import { StateMark } from "@/components/ui/marks";
 import { can } from "@/lib/auth/permissions";
 import { listOutbreaks } from "@/lib/outbreaks/queries";
+import { ScrollFrame } from "@/components/ui/scroll-frame";
 
 export const metadata: Metadata = { title: "Outbreaks" };
 
@@ -27,7 +28,7 @@ export default async function OutbreaksPage() {
           {t("emptyText")}
         </EmptyState>
       ) : (
-        <div className="mt-6 overflow-x-auto">
+        <ScrollFrame label={t("title")} className="mt-6">
           <table className="head">
             <thead>
               <tr>
@@ -61,7 +62,7 @@ export default async function OutbreaksPage() {
               ))}
             </tbody>
           </table>
-        </div>
+        </ScrollFrame>
       )}
     </main>
   );

@@ -7,6 +7,7 @@ import { Button } from "@/components/ui/button";
 import { AUDIT_ACTIONS } from "@/lib/audit/entries";
 import { listRegister, PAGE_ROWS, readChain } from "@/lib/audit/queries";
 import { firstFault, GENESIS } from "@/lib/audit/verify";
+import { ScrollFrame } from "@/components/ui/scroll-frame";
 
 export const metadata: Metadata = { title: "Register" };
 
@@ -54,7 +55,7 @@ export default async function RegisterPage({ searchParams }: { searchParams: Sea
       {entries.length === 0 ? (
         <p className="py-6">{t("empty")}</p>
       ) : (
-        <div className="mt-3 overflow-x-auto">
+        <ScrollFrame label={t("title")} className="mt-3">
           <table className="head">
             <thead>
               <tr>
@@ -83,7 +84,7 @@ export default async function RegisterPage({ searchParams }: { searchParams: Sea
               ))}
             </tbody>
           </table>
-        </div>
+        </ScrollFrame>
       )}
       <div className="mt-4 flex gap-6">
         {filter.before ? <Link href={query({})}>{t("newest")}</Link> : null}

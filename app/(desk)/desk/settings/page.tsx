@@ -6,6 +6,7 @@ import { can } from "@/lib/auth/permissions";
 import { LOCALES } from "@/lib/i18n/locales";
 import { listOwnSessions, listUsers } from "@/lib/users/queries";
 import { EndSessionsForm, InviteForm, PersonForms } from "./_people-forms";
+import { ScrollFrame } from "@/components/ui/scroll-frame";
 
 export const metadata: Metadata = { title: "Settings" };
 
@@ -49,7 +50,7 @@ export default async function SettingsPage() {
       {manages ? (
         <>
           <Section title={t("people")} note={t("peopleNote")}>
-            <div className="overflow-x-auto">
+            <ScrollFrame label={t("people")}>
               <table className="head">
                 <thead>
                   <tr>
@@ -81,7 +82,7 @@ export default async function SettingsPage() {
                   ))}
                 </tbody>
               </table>
-            </div>
+            </ScrollFrame>
           </Section>
           <Section title={t("invite")} note={t("inviteNote")}>
             <InviteForm key={people.length} />

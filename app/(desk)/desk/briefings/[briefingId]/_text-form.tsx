@@ -95,7 +95,7 @@ export function TextForm(props: Props) {
           const name = number ? t("paragraph", { number: String(number) }) : t("newParagraph", { part: parts(row.part) });
           return (
             <Fragment key={field.key}>
-              {first ? <h3 className="mt-5 text-13 text-ink-2">{parts(row.part)}</h3> : null}
+              {first ? <h2 className="mt-5 text-13 text-ink-2">{parts(row.part)}</h2> : null}
               <div id={`p${number ?? ""}`} className={`grid gap-x-6 gap-y-2 border-b border-hair py-3 ${columns} ${row.stale ? "border-s-3 border-s-brass ps-3" : ""}`}>
                 {isSource ? null : (
                   <p lang="en" dir="ltr" className="bf">

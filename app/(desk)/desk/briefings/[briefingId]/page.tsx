@@ -105,7 +105,7 @@ export default async function BriefingPage({ params, searchParams }: Props) {
             sourceShown={sourceShown}
             readOnly={readOnly}
           />
-          <aside className="grid gap-8">
+          <aside aria-label={t("checks")} className="grid gap-8">
             <section>
               <h2 className="text-17">{t("checks")}</h2>
               <p className="sm mut">{t("checksLede", { stops: all.filter(({ level }) => level === "stops").length, looks: all.filter(({ level }) => level === "looks").length })}</p>

@@ -49,9 +49,9 @@ export function ReviewForm({ briefingId, versionId, version, statement }: { brie
             </li>
           ))}
         </ol>
-        <div className="sheet grid gap-4">
+        <div className="sheet grid min-w-0 gap-4">
           <h2>{t("signOff")}</h2>
-          <p className="sm break-words">{statement}</p>
+          <p className="sm [overflow-wrap:anywhere]">{statement}</p>
           <TextAreaField meta={fields.comment} label={t("comment")} rows={4} />
           <div className="flex flex-wrap gap-3">
             <button type="submit" name="decision" value="sign" className="btn pri">

@@ -19,6 +19,7 @@ import { isFigureKey, readFigure } from "@/lib/figures/catalogue";
 import { isLocale, LOCALES } from "@/lib/i18n/locales";
 import { Changes } from "./_changes";
 import { ReviewForm } from "./_review-form";
+import { ScrollFrame } from "@/components/ui/scroll-frame";
 
 export const metadata: Metadata = { title: "Review" };
 
@@ -131,7 +132,7 @@ export default async function ReviewPage({ params, searchParams }: Props) {
           <CheckMark state={state === "recomputed" ? "passes" : "stops"} />
           {t(state)}
         </p>
-        <div className="mt-2 overflow-x-auto">
+        <ScrollFrame label={t("figures")} className="mt-2">
           <table className="head">
             <thead>
               <tr>
@@ -159,13 +160,13 @@ export default async function ReviewPage({ params, searchParams }: Props) {
                     <td className="sm">
                       {kinds(`kinds.${figure.figure as "finalDeaths"}`)}, {figure.package === "none" ? kinds("none") : figure.package}
                     </td>
-                    <td className="r xs dim">{figure.form === "value" ? value?.value : `${value?.low} – ${value?.high}`}</td>
+                    <td className="r xs dim [overflow-wrap:anywhere]">{figure.form === "value" ? value?.value : `${value?.low} – ${value?.high}`}</td>
                   </tr>
                 );
               })}
             </tbody>
           </table>
-        </div>
+        </ScrollFrame>
       </section>
     );
   }
@@ -175,7 +176,7 @@ export default async function ReviewPage({ params, searchParams }: Props) {
     return (
       <section>
         <h2 className="text-17">{t("measures")}</h2>
-        <div className="mt-2 overflow-x-auto">
+        <ScrollFrame label={t("figures")} className="mt-2">
           <table className="head">
             <thead>
               <tr>
@@ -210,7 +211,7 @@ export default async function ReviewPage({ params, searchParams }: Props) {
               })}
             </tbody>
           </table>
-        </div>
+        </ScrollFrame>
       </section>
     );
   }
