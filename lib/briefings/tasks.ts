@@ -17,8 +17,8 @@ export async function listTasks({ actor }: StaffCtx): Promise<Task[]> {
     const rows = await db
       .select({
         id: outbreaks.id, name: outbreaks.name, hasProfile: sql<boolean>`${outbreaks.profile} is not null`,
-        packages: sql<number>`(select count(*)::int from ${packages} where ${packages.outbreakId} = ${outbreaks.id})`,
-        assessments: sql<number>`(select count(*)::int from ${assessments} where ${assessments.outbreakId} = ${outbreaks.id})`,
+        packages: sql<number>`(select count(*)::int from ${packages} p where p.outbreak_id = "outbreaks"."id")`,
+        assessments: sql<number>`(select count(*)::int from ${assessments} a where a.outbreak_id = "outbreaks"."id")`,
       })
       .from(outbreaks)
       .orderBy(asc(outbreaks.createdAt));

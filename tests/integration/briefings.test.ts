@@ -9,6 +9,7 @@ import { getWhole } from "@/lib/briefings/queries";
 import { reviewBriefing } from "@/lib/briefings/review-briefing";
 import { saveBriefingSettings, saveText } from "@/lib/briefings/save-text";
 import { submitBriefing } from "@/lib/briefings/submit-briefing";
+import { listTasks } from "@/lib/briefings/tasks";
 import { closeCompute } from "@/lib/compute/assess-off-thread";
 import type { StaffCtx } from "@/lib/context";
 import { DomainError, type DomainErrorCode } from "@/lib/errors";
@@ -169,4 +170,14 @@ test.each(["frozen_assessments", "briefing_versions", "reviews", "signature_void
     await expect(client.unsafe(`delete from ${table}`)).rejects.toThrow(message);
     await expect(client.unsafe(`truncate ${table} cascade`)).rejects.toThrow(/never change|permission denied/);
   }
+});
+
+test("the home page names what is open: nothing of an outbreak that has packages and an assessment, and the review for reviewers", async () => {
+  const adviser = await asStaff("adviser");
+  const { id } = await submitted();
+  const whole = await getWhole(id);
+  const hrefs = (await listTasks(adviser)).map(({ href }) => href);
+  expect(hrefs).not.toContain(`/desk/outbreaks/${whole.frozen.outbreakId}/packages`);
+  expect(hrefs).not.toContain(`/desk/assessments/new?outbreak=${whole.frozen.outbreakId}`);
+  expect((await listTasks(reviewer)).map(({ href }) => href)).toContain(`/desk/briefings/${id}/review`);
 });
