@@ -16,8 +16,8 @@ let ids: string[];
 beforeAll(async () => {
   browser = await launch();
   officer = await asStaff("communications");
-  release = await aRelease({ locales: ["en"] });
-  // The newest, so that it stands on the page whatever else the demonstration has released.
+  // The newest, so that it stands on the page whatever else has been released.
+  release = await aRelease({ locales: ["en"], publishedAt: new Date(Date.now() + 3_600_000) });
   ids = (await subscribers(12)).map(({ id }) => id);
   const state = (n: number) => (n < 7 ? ("accepted" as const) : n < 9 ? ("rejected" as const) : ("unknown" as const));
   await db.insert(deliveries).values(ids.map((subscriptionId, n) => ({ kind: "briefing" as const, releaseId: release.id, subscriptionId, locale: "en" as const, state: state(n), finishedAt: new Date(), unknownAt: n < 9 ? null : new Date(), reply: n < 7 ? "250" : n < 9 ? "550 5.1.1" : "ECONNECTION" })));
