@@ -49,7 +49,7 @@ async function countAlarms(): Promise<Alarms> {
       count(*) filter (where d.state in ('queued', 'deferred') and d.next_at < now() - interval '2 minutes'
         and (d.release_id is null or (s.state = 'active' and s.suppressed_at is null)))::int as overdue,
       count(*) filter (where d.state = 'deferred' and d.reply in ('ESOCKET', 'ECONNECTION', 'ETIMEDOUT', 'EDNS', 'ETLS'))::int as unreachable,
-      count(*) filter (where d.state = 'deferred' and (d.reply ~ '^(530|535)' or d.reply in ('EAUTH', 'ENOAUTH') or d.reply like '5%'))::int as "refusedUs",
+      count(*) filter (where d.state = 'deferred' and (d.reply ~ '^(530|535)' or d.reply in ('EAUTH', 'ENOAUTH') or (d.reply ~ '^5' and d.reply !~ '^552|5\\.2\\.2')))::int as "refusedUs",
       count(*) filter (where d.state = 'rejected' and d.reply like '% 5.7.%' and d.finished_at > now() - interval '7 days')::int as policy,
       count(*) filter (where d.state = 'rejected' and d.reply !~ '^5' and d.reply <> 'EXPIRED' and d.finished_at > now() - interval '7 days')::int as "gaveUp",
       (select count(*) from subscriptions where suppressed_at is not null)::int as suspended

@@ -1,5 +1,6 @@
 import Link from "next/link";
-import { getFormatter, getTranslations } from "next-intl/server";
+import { getTranslations } from "next-intl/server";
+import { getDeskFormatter } from "@/lib/i18n/desk-formatter";
 import { type Level, StateMark } from "@/components/ui/marks";
 import { type ChainStatus, getChain } from "@/lib/briefings/chain";
 
@@ -11,7 +12,7 @@ type Step = { stage: Stage; level: Level; status: string; href: string | null };
 export async function StageLine({ outbreakId, current }: { outbreakId: string; current: Stage }) {
   const chain = await getChain(outbreakId);
   const t = await getTranslations("Desk.chain");
-  const format = await getFormatter();
+  const format = await getDeskFormatter();
   const day = (date: Date) => format.dateTime(date, { day: "numeric", month: "short" });
   const steps = stepsOf(chain, t, day);
   return (

@@ -1,6 +1,7 @@
 import type { Metadata } from "next";
 import Link from "next/link";
-import { getFormatter, getTranslations } from "next-intl/server";
+import { getTranslations } from "next-intl/server";
+import { getDeskFormatter } from "@/lib/i18n/desk-formatter";
 import { requireStaff, staffCtx } from "@/app/(desk)/_lib/session";
 import { PageHead, Section } from "@/components/desk/page-parts";
 import { ButtonLink } from "@/components/ui/button";
@@ -18,7 +19,7 @@ export default async function DeskHome() {
   const actor = await requireStaff();
   const ctx = await staffCtx(actor);
   const [t, states, acts, format, tasks, newest, entries, outbreaks] = await Promise.all([
-    getTranslations("Desk.home"), getTranslations("Desk.states"), getTranslations("Register"), getFormatter(), listTasks(ctx), listNewest(),
+    getTranslations("Desk.home"), getTranslations("Desk.states"), getTranslations("Register"), getDeskFormatter(), listTasks(ctx), listNewest(),
     can(actor.role, "register:read") ? listRegister(ctx, {}) : [], listOutbreaks(),
   ]);
   const head = (task: Task) =>

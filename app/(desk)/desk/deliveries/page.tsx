@@ -1,5 +1,6 @@
 import type { Metadata } from "next";
-import { getFormatter, getTranslations } from "next-intl/server";
+import { getTranslations } from "next-intl/server";
+import { getDeskFormatter } from "@/lib/i18n/desk-formatter";
 import { requireStaff, staffCtx } from "@/app/(desk)/_lib/session";
 import { EmptyState, PageHead, Section } from "@/components/desk/page-parts";
 import { getDeliveryReport, listUnknown } from "@/lib/deliveries/queries";
@@ -13,7 +14,7 @@ const endOf = (reply: string | null) => (reply === null ? "crash" : reply === "E
 
 export default async function DeliveriesPage() {
   const ctx = await staffCtx(await requireStaff("delivery:read"));
-  const [report, unknown, t, format] = await Promise.all([getDeliveryReport(ctx), listUnknown(ctx), getTranslations("Deliveries"), getFormatter()]);
+  const [report, unknown, t, format] = await Promise.all([getDeliveryReport(ctx), listUnknown(ctx), getTranslations("Deliveries"), getDeskFormatter()]);
   return (
     <main id="main" className="wrap">
       <PageHead title={t("title")} lede={t("lede")} />

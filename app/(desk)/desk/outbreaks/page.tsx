@@ -1,6 +1,7 @@
 import type { Metadata } from "next";
 import Link from "next/link";
-import { getFormatter, getTranslations } from "next-intl/server";
+import { getTranslations } from "next-intl/server";
+import { getDeskFormatter } from "@/lib/i18n/desk-formatter";
 import { requireStaff } from "@/app/(desk)/_lib/session";
 import { EmptyState, PageHead } from "@/components/desk/page-parts";
 import { ButtonLink } from "@/components/ui/button";
@@ -13,7 +14,7 @@ export const metadata: Metadata = { title: "Outbreaks" };
 
 export default async function OutbreaksPage() {
   const actor = await requireStaff();
-  const [t, format, rows] = await Promise.all([getTranslations("Outbreaks"), getFormatter(), listOutbreaks()]);
+  const [t, format, rows] = await Promise.all([getTranslations("Outbreaks"), getDeskFormatter(), listOutbreaks()]);
   const mayWrite = can(actor.role, "outbreak:write");
   const add = mayWrite ? (
     <ButtonLink look="primary" href="/desk/outbreaks/new">

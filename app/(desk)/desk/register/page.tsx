@@ -1,6 +1,7 @@
 import type { Metadata } from "next";
 import Link from "next/link";
-import { getFormatter, getTranslations } from "next-intl/server";
+import { getTranslations } from "next-intl/server";
+import { getDeskFormatter } from "@/lib/i18n/desk-formatter";
 import { requireStaff, staffCtx } from "@/app/(desk)/_lib/session";
 import { Note, PageHead } from "@/components/desk/page-parts";
 import { Button } from "@/components/ui/button";
@@ -20,7 +21,7 @@ export default async function RegisterPage({ searchParams }: { searchParams: Sea
   const before = Number(one("before"));
   const filter = { action: AUDIT_ACTIONS.find((action) => action === one("action")), subject: one("subject"), before: Number.isSafeInteger(before) && before > 0 ? before : undefined };
   const entries = await listRegister(await staffCtx(actor), filter);
-  const [t, format] = await Promise.all([getTranslations("Register"), getFormatter()]);
+  const [t, format] = await Promise.all([getTranslations("Register"), getDeskFormatter()]);
   const oldest = entries.at(-1)?.seq;
   const newest = entries[0]?.seq;
   // The run between the oldest and newest shown, whatever the filter hides in between.

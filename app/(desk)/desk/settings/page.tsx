@@ -1,5 +1,6 @@
 import type { Metadata } from "next";
-import { getFormatter, getTranslations } from "next-intl/server";
+import { getTranslations } from "next-intl/server";
+import { getDeskFormatter } from "@/lib/i18n/desk-formatter";
 import { requireStaff, staffCtx } from "@/app/(desk)/_lib/session";
 import { PageHead, Section } from "@/components/desk/page-parts";
 import { can } from "@/lib/auth/permissions";
@@ -17,7 +18,7 @@ export default async function SettingsPage() {
   const [t, roles, format, sessions, people] = await Promise.all([
     getTranslations("Users"),
     getTranslations("Roles"),
-    getFormatter(),
+    getDeskFormatter(),
     listOwnSessions(ctx),
     manages ? listUsers(ctx) : [],
   ]);

@@ -1,7 +1,8 @@
 import type { Metadata } from "next";
 import Link from "next/link";
 import { notFound } from "next/navigation";
-import { getFormatter, getTranslations } from "next-intl/server";
+import { getTranslations } from "next-intl/server";
+import { getDeskFormatter } from "@/lib/i18n/desk-formatter";
 import { requireStaff } from "@/app/(desk)/_lib/session";
 import { StageLine } from "@/app/(desk)/_lib/stage-line";
 import { Note, PageHead } from "@/components/desk/page-parts";
@@ -40,7 +41,7 @@ export default async function BriefingPage({ params, searchParams }: Props) {
   const search = await searchParams;
   const locale = isLocale(search.locale) && row.locales.includes(search.locale) ? search.locale : row.sourceLocale;
   const [t, format, shown, sourceShown, answers, why] = await Promise.all([
-    getTranslations("Briefings"), getFormatter(), shownIn(whole, locale), shownIn(whole, row.sourceLocale), listReviews(briefingId), getTranslations("BriefingReasons"),
+    getTranslations("Briefings"), getDeskFormatter(), shownIn(whole, locale), shownIn(whole, row.sourceLocale), listReviews(briefingId), getTranslations("BriefingReasons"),
   ]);
   const facts = stepFacts(whole, actor.id);
   const readOnly = !can(actor.role, "briefing:write") || reasonsAgainst("edit", facts).length > 0;

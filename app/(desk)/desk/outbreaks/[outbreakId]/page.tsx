@@ -1,6 +1,7 @@
 import type { Metadata } from "next";
 import { notFound } from "next/navigation";
-import { getFormatter, getTranslations } from "next-intl/server";
+import { getTranslations } from "next-intl/server";
+import { getDeskFormatter } from "@/lib/i18n/desk-formatter";
 import { requireStaff } from "@/app/(desk)/_lib/session";
 import { StageLine } from "@/app/(desk)/_lib/stage-line";
 import { Note, PageHead, Section } from "@/components/desk/page-parts";
@@ -23,7 +24,7 @@ export default async function OutbreakPage({ params, searchParams }: Props) {
   const { outbreakId } = await params;
   const outbreak = await getOutbreak(outbreakId).catch(() => notFound());
   const { saved } = await searchParams;
-  const [t, format] = await Promise.all([getTranslations("Outbreaks"), getFormatter()]);
+  const [t, format] = await Promise.all([getTranslations("Outbreaks"), getDeskFormatter()]);
   const readOnly = !can(actor.role, "outbreak:write");
   const { profile } = outbreak;
   const out = profile && readOut(centralOf(outbreak));

@@ -1,6 +1,7 @@
 import type { Metadata } from "next";
 import { notFound } from "next/navigation";
-import { getFormatter, getTranslations } from "next-intl/server";
+import { getTranslations } from "next-intl/server";
+import { getDeskFormatter } from "@/lib/i18n/desk-formatter";
 import { requireStaff } from "@/app/(desk)/_lib/session";
 import { StageLine } from "@/app/(desk)/_lib/stage-line";
 import { PageHead, Section } from "@/components/desk/page-parts";
@@ -24,7 +25,7 @@ export default async function PublicationPage({ params }: { params: Promise<{ br
   const { row, frozen, source } = whole;
   const facts = stepFacts(whole, actor.id);
   const [t, why, format, released, others] = await Promise.all([
-    getTranslations("Publication"), getTranslations("BriefingReasons"), getFormatter(), listOwnReleases(briefingId), listAssessments(frozen.outbreakId),
+    getTranslations("Publication"), getTranslations("BriefingReasons"), getDeskFormatter(), listOwnReleases(briefingId), listAssessments(frozen.outbreakId),
   ]);
   const day = (date: Date) => format.dateTime(date, { day: "numeric", month: "short", year: "numeric" });
   const against = reasonsAgainst("publish", facts);

@@ -1,7 +1,8 @@
 import type { Metadata } from "next";
 import Link from "next/link";
 import { notFound } from "next/navigation";
-import { getFormatter, getTranslations } from "next-intl/server";
+import { getTranslations } from "next-intl/server";
+import { getDeskFormatter } from "@/lib/i18n/desk-formatter";
 import { requireStaff } from "@/app/(desk)/_lib/session";
 import { StageLine } from "@/app/(desk)/_lib/stage-line";
 import { BriefingArticle } from "@/components/briefings/briefing-article";
@@ -39,7 +40,7 @@ export default async function ReviewPage({ params, searchParams }: Props) {
   const { briefingId } = await params;
   const whole = await getWhole(briefingId).catch(() => notFound());
   const { row, frozen, version, signature } = whole;
-  const [t, kinds, format, versions, answers] = await Promise.all([getTranslations("Review"), getTranslations("Briefings"), getFormatter(), listVersions(briefingId), listReviews(briefingId)]);
+  const [t, kinds, format, versions, answers] = await Promise.all([getTranslations("Review"), getTranslations("Briefings"), getDeskFormatter(), listVersions(briefingId), listReviews(briefingId)]);
   const day = (date: Date) => format.dateTime(date, { day: "numeric", month: "short", year: "numeric", hour: "2-digit", minute: "2-digit" });
   const short = (iso: string) => format.dateTime(new Date(`${iso}T00:00:00Z`), { day: "numeric", month: "short", year: "numeric" });
   const shownVersion = versions.find(({ id }) => id === version?.id) ?? versions[0];
