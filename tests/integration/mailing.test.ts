@@ -180,11 +180,10 @@ describe("leaving while a mailing goes out", () => {
     const [leaver, other] = await subscribers(2);
     if (!leaver || !other) throw new Error("no subscribers were made");
     await queue(release.id, [leaver, other]);
-    const dispatcher = start();
     const sql = workerSql(1);
     await sql.begin(async (tx) => {
       await tx`select id from subscriptions where id = ${leaver.id} for update`;
-      dispatcher.wake();
+      start();
       await until(async () => (await rowOf(other.id)).state === "accepted");
       expect((await rowOf(leaver.id)).state).toBe("queued");
       await tx`update subscriptions set state = 'left', left_at = now() where id = ${leaver.id}`;
