@@ -38,13 +38,18 @@ export type Paragraph = {
   text: string;
   /** Translations: hash of the source paragraph that this was made from. */
   sourceHash?: string;
+  /** Translations: that source paragraph itself, so that a translator sees what changed since. */
+  madeFrom?: string;
 };
 
 /** A bound figure: a reference into the frozen assessment. `package` is a letter, or "none" for no further measures. */
 export type FigureRef = { ref: string; figure: string; package: string; form: "value" | "interval" };
 
+/** Per language: what was wrong, and what that changes for the reader. */
+export type CorrectionNotes = Partial<Record<Locale, { cause: string; effect: string }>>;
+
 /** Why a published briefing is written again; a correction says per language what was wrong and what it changes. */
-export type Revision = { kind: "update" } | { kind: "correction"; notes: Partial<Record<Locale, { cause: string; effect: string }>> };
+export type Revision = { kind: "update" } | { kind: "correction"; notes: CorrectionNotes };
 
 /** Items of the reviewer's checklist, 1 to 18. */
 export const CHECKLIST_ITEMS = Array.from({ length: 18 }, (_, index) => index + 1);

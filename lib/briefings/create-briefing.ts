@@ -1,4 +1,4 @@
-import { max } from "drizzle-orm";
+import { max, sql } from "drizzle-orm";
 import type { z } from "zod";
 import { briefings, briefingTexts } from "@/db/schema";
 import { findFrozen } from "@/lib/assessments/queries";
@@ -8,7 +8,10 @@ import { inTransaction, type StaffCtx } from "@/lib/context";
 import { env } from "@/lib/env";
 import { DomainError } from "@/lib/errors";
 import { CreateBriefingInput } from "./schema";
-import { directionOf, startingFigures, templateTexts } from "./template";
+import { directionOf, fewOf, startingFigures, templateTexts } from "./template";
+
+/** Two briefings started at once get two numbers. */
+const NUMBER_LOCK = 41_730_202;
 
 /** A draft in every language of the outbreak, its wording chosen by the frozen result. @throws DomainError "notReady" where it isn't frozen */
 export async function createBriefing(ctx: StaffCtx, raw: z.input<typeof CreateBriefingInput>): Promise<{ id: string; number: number }> {
@@ -24,8 +27,10 @@ export async function createBriefing(ctx: StaffCtx, raw: z.input<typeof CreateBr
       direction: directionOf(frozen.result, packageLetter),
       illness: outbreak.publicNames[locale]?.name ?? outbreak.name,
       open: decided.endDay === null,
+      few: fewOf(frozen.result, packageLetter),
       contact: env().AUTHORITY_CONTACT,
     }));
+    await tx.execute(sql`select pg_advisory_xact_lock(${NUMBER_LOCK})`);
     const [last] = await tx.select({ number: max(briefings.number) }).from(briefings);
     const number = (last?.number ?? 0) + 1;
     const words = `${outbreak.name} ${outbreak.place}`.normalize("NFKD").toLowerCase().replace(/[^a-z0-9]+/g, "-").replace(/^-+|-+$/g, "");

@@ -86,6 +86,7 @@ function findingsOf(row: Briefing, source: BriefingText, text: BriefingText | un
 /** What the workflow table asks for. */
 export function stepFacts({ row, texts, findings, frozen, signature, released }: WholeBriefing, actorId: string): StepFacts {
   const decided = frozen.context.packages.find(({ letter }) => letter === row.packageLetter);
+  const { revision } = row;
   const codes = new Set(decided?.items.map(({ measureCode }) => measureCode));
   return {
     state: row.state,
@@ -95,6 +96,7 @@ export function stepFacts({ row, texts, findings, frozen, signature, released }:
     reviewDate: row.reviewDate,
     deliverable: decided?.deliverable ?? false,
     localesWithoutMeasures: row.locales.filter((locale) => frozen.context.measures.some(({ code, publicTexts }) => codes.has(code) && !publicTexts[locale]?.title)),
+    localesWithoutNote: revision?.kind === "correction" ? row.locales.filter((locale) => !revision.notes[locale]?.cause || !revision.notes[locale]?.effect) : [],
     signature,
     released,
   };

@@ -1,6 +1,7 @@
 import type { FrozenAssessment } from "../assessments/queries";
 import type { MeasureSnapshot } from "../assessments/snapshot";
 import { type FigureKey, isFigureKey, readFigure } from "../figures/catalogue";
+import { formatMoneyInText } from "../figures/format";
 import { type FigureWords, showFigure } from "../figures/resolve";
 import { wholePersons } from "../figures/round";
 import { piecesOfText } from "../figures/tokens";
@@ -28,7 +29,7 @@ export type RenderText = { locale: Locale; title: string; paragraphs: readonly P
 const UNDECIDED = { from: 0.025, to: 0.975 };
 
 /** Numbers and dates in one language. */
-async function wordsOf(locale: Locale, dayZero: string): Promise<{ words: FigureWords; label: (ref: FigureRef, chosen: string) => string }> {
+async function wordsOf(locale: Locale, { dayZero, currency, priceYear }: FrozenAssessment["context"]["outbreak"]): Promise<{ words: FigureWords; label: (ref: FigureRef, chosen: string) => string }> {
   const t = await translatorOf(locale, "Figures");
   return {
     words: {
@@ -38,10 +39,11 @@ async function wordsOf(locale: Locale, dayZero: string): Promise<{ words: Figure
       under: (percent) => t("under", { percent }),
       over: (percent) => t("over", { percent }),
       day: (day) => formatDay(dateOf(dayZero, Math.round(day)), locale),
+      money: (amount) => formatMoneyInText(amount, currency, numberLocale(locale)),
     },
     label: ({ figure, package: letter, form }, chosen) => {
       const which = letter === "none" ? t("without") : letter === chosen ? t("with") : t("other", { letter });
-      const label = isFigureKey(figure) ? t(`labels.${figure}`, { which }) : figure;
+      const label = isFigureKey(figure) ? t(`labels.${figure}`, { which, year: String(priceYear) }) : figure;
       return form === "interval" ? `${label} (${t("range")})` : label;
     },
   };
@@ -95,11 +97,21 @@ export function resolvableTokens(frozen: FrozenAssessment, facts: Pick<RenderFac
   return new Set([...figures.map(({ ref }) => ref), ...datesOf(frozen, facts.packageLetter, facts.reviewDate).keys()]);
 }
 
+/**
+ * The paragraphs of one language in the order and parts of its source: what the source dropped goes, what isn't
+ * translated yet is left out.
+ */
+export const pairedParagraphs = (source: readonly Paragraph[], own: readonly Paragraph[]): Paragraph[] =>
+  source.flatMap(({ id, part }) => {
+    const found = own.find((each) => each.id === id);
+    return found ? [{ ...found, part }] : [];
+  });
+
 /** Exactly what one language shows: every token filled from the frozen assessment, the schedule or the settings. */
 export async function renderBriefing(frozen: FrozenAssessment, facts: RenderFacts, text: RenderText): Promise<RenderedBriefing> {
   const { locale } = text;
   const { outbreak } = frozen.context;
-  const { words, label } = await wordsOf(locale, outbreak.dayZero);
+  const { words, label } = await wordsOf(locale, outbreak);
   const dates = datesOf(frozen, facts.packageLetter, facts.reviewDate);
   const shown = new Map(
     facts.figures.map((ref) => {
@@ -116,7 +128,8 @@ export async function renderBriefing(frozen: FrozenAssessment, facts: RenderFact
       return iso ? { kind: "date", token: piece.token, text: formatDay(iso, locale), iso } : { kind: "text", text: `{{${piece.token}}}` };
     });
   const paragraphs = text.paragraphs.filter(({ text: raw }) => raw.trim() !== "").map(({ id, part, text: raw }) => ({ id, part, inlines: inlinesOf(raw) }));
-  const used = new Set(paragraphs.flatMap(({ inlines }) => inlines.flatMap((inline) => (inline.kind === "figure" ? [inline.ref] : []))));
+  const title = inlinesOf(text.title);
+  const used = new Set([title, ...paragraphs.map(({ inlines }) => inlines)].flatMap((inlines) => inlines.flatMap((inline) => (inline.kind === "figure" ? [inline.ref] : []))));
   const measures = scheduleOf(frozen, facts.packageLetter, locale);
   const chance = readFigure(frozen.result, "chanceShrinks", facts.packageLetter)?.value ?? null;
   const publicName = outbreak.publicNames[locale] ?? { name: outbreak.name, place: outbreak.place };
@@ -126,7 +139,7 @@ export async function renderBriefing(frozen: FrozenAssessment, facts: RenderFact
     briefingNumber: facts.number,
     versionNumber: facts.versionNumber,
     slug: facts.slug,
-    title: inlinesOf(text.title).map((inline) => inline.text).join(""),
+    title: title.map((inline) => inline.text).join(""),
     outbreakName: publicName.name,
     place: publicName.place,
     authorityName: facts.authority.name,

@@ -25,6 +25,11 @@ export const SaveTextInput = z.object({
   title: words("Title", 160).optional().transform((text) => text ?? ""),
   titleCurrent: z.preprocess((raw) => raw === "on" || raw === true, z.boolean()),
   paragraphs: z.array(paragraph).max(80, "A briefing has at most 80 paragraphs."),
+  /** Source language: a paragraph to put before the one above it in its part, after saving. */
+  raise: z
+    .string()
+    .regex(/^p\d{1,4}$/)
+    .optional(),
 });
 
 export const SaveBriefingSettingsInput = z.object({
@@ -38,6 +43,13 @@ export const AddFigureInput = z.object({
   figure: z.enum(FIGURE_KEYS, "Choose a figure of the list."),
   package: z.string().regex(/^(?:none|[A-H])$/, "Choose a package of the assessment, or no further measures."),
   form: z.enum(["value", "interval"]),
+});
+export const SaveCorrectionNoteInput = z.object({
+  briefingId: id,
+  version,
+  locale: z.enum(LOCALE_CODES),
+  cause: words("What was wrong", 1000, 1),
+  effect: words("What it changes", 1000, 1),
 });
 export const SubmitBriefingInput = z.object({ briefingId: id, version });
 

@@ -7,23 +7,33 @@ import { canonicalJson, sha256Hex } from "@/lib/canonical-json";
 import { inTransaction, type StaffCtx } from "@/lib/context";
 import { DomainError } from "@/lib/errors";
 import { getWhole, renderFacts, stepFacts, type WholeBriefing } from "./queries";
-import { renderBriefing } from "./render";
+import { pairedParagraphs, renderBriefing } from "./render";
+import type { CorrectionNotes } from "./constants";
 import type { RenderedBriefing } from "./rendered";
 import { SubmitBriefingInput } from "./schema";
 import { reasonsAgainst } from "./workflow";
 
-export type VersionContent = { rendered: RenderedBriefing[]; assessment: { inputHash: string; resultHash: string; contextHash: string } };
+export type VersionContent = {
+  rendered: RenderedBriefing[];
+  assessment: { inputHash: string; resultHash: string; contextHash: string };
+  /** What a correction tells residents, per language; absent where this is none. */
+  correction?: CorrectionNotes;
+};
 
 /** The exact content of the version being written: every language rendered, and what it rests on. */
 export async function versionContent(whole: WholeBriefing): Promise<{ content: string; contentHash: string }> {
-  const { row, texts, frozen } = whole;
+  const { row, texts, source, frozen } = whole;
   const rendered = await Promise.all(
     row.locales.map((locale) => {
       const text = texts.find((each) => each.locale === locale);
-      return renderBriefing(frozen, renderFacts(row), { locale, title: text?.title ?? "", paragraphs: text?.paragraphs ?? [] });
+      return renderBriefing(frozen, renderFacts(row), { locale, title: text?.title ?? "", paragraphs: pairedParagraphs(source.paragraphs, text?.paragraphs ?? []) });
     }),
   );
-  const body: VersionContent = { rendered, assessment: { inputHash: frozen.inputHash, resultHash: frozen.resultHash, contextHash: frozen.contextHash } };
+  const body: VersionContent = {
+    rendered,
+    assessment: { inputHash: frozen.inputHash, resultHash: frozen.resultHash, contextHash: frozen.contextHash },
+    ...(row.revision?.kind === "correction" ? { correction: row.revision.notes } : {}),
+  };
   const content = canonicalJson(body);
   return { content, contentHash: sha256Hex(content) };
 }

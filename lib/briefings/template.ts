@@ -1,6 +1,6 @@
 import type { AssessmentResult } from "../engine/types";
 import { readFigure } from "../figures/catalogue";
-import { isMeasurable } from "../figures/round";
+import { isFew, isMeasurable } from "../figures/round";
 import type { Locale } from "../i18n/locales";
 import { translatorOf } from "../i18n/translator";
 import type { FigureRef, Paragraph, PartKey } from "./constants";
@@ -30,11 +30,27 @@ export function directionOf(result: AssessmentResult, letter: string): Direction
   return averted.value > 0 ? "averts" : "worse";
 }
 
+export type TemplateFacts = {
+  direction: Direction;
+  illness: string;
+  /** A measure of the package has no end. */
+  open: boolean;
+  /** Fewer than ten would die: "about" doesn't fit, and chance decides. */
+  few: { without: boolean; with: boolean };
+  contact: string;
+};
+
+/** Where the deaths without and with the package are too few to be given as a number. */
+export function fewOf(result: AssessmentResult, letter: string): TemplateFacts["few"] {
+  const few = (which: string) => isFew(readFigure(result, "finalDeaths", which)?.value ?? 0);
+  return { without: few("none"), with: few(letter) };
+}
+
 type Line = { part: PartKey; key: string };
 export type TemplateText = { title: string; paragraphs: Paragraph[] };
 
 /** A first text in one language, its wording chosen by the frozen result. Tokens stand for every figure and date. */
-export async function templateText(locale: Locale, facts: { direction: Direction; illness: string; open: boolean; contact: string }): Promise<TemplateText> {
+export async function templateText(locale: Locale, facts: TemplateFacts): Promise<TemplateText> {
   const t = await translatorOf(locale, "BriefingTemplates");
   const token = (name: string) => `{{${name}}}`;
   const values = {
@@ -57,8 +73,8 @@ export async function templateText(locale: Locale, facts: { direction: Direction
     { part: "inShort", key: facts.open ? "inForceOpen" : "inForce" },
     { part: "inShort", key: short[direction] },
     { part: "inShort", key: "shrinks" },
-    { part: "whatWeExpect", key: "without" },
-    { part: "whatWeExpect", key: "with" },
+    { part: "whatWeExpect", key: facts.few.without ? "withoutFew" : "without" },
+    { part: "whatWeExpect", key: facts.few.with ? "withFew" : "with" },
     { part: "whatWeExpect", key: direction },
     { part: "howSure", key: "howSure" },
     { part: "howSure", key: "look" },
@@ -81,7 +97,10 @@ export async function templateTexts(locales: readonly Locale[], source: Locale, 
     locales.map(async (locale) => {
       const text = locale === source ? own : await templateText(locale, factsOf(locale));
       if (locale === source) return { locale, ...text, titleSourceHash: null };
-      const paragraphs = text.paragraphs.map((paragraph, index) => ({ ...paragraph, sourceHash: sourceHash(own.paragraphs[index]?.text ?? "") }));
+      const paragraphs = text.paragraphs.map((paragraph, index) => {
+        const madeFrom = own.paragraphs[index]?.text ?? "";
+        return { ...paragraph, sourceHash: sourceHash(madeFrom), madeFrom };
+      });
       return { locale, title: text.title, paragraphs, titleSourceHash: sourceHash(own.title) };
     }),
   );

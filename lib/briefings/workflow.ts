@@ -28,6 +28,8 @@ export type StepFacts = {
   deliverable: boolean;
   /** Languages in which a measure of the package has no words for residents. */
   localesWithoutMeasures: readonly string[];
+  /** Languages in which a correction doesn't say yet what was wrong and what it changes. */
+  localesWithoutNote: readonly string[];
   /** The signature on the present version, where one stands. */
   signature: { reviewer: string } | null;
   /** Whether residents can read a release of it. */
@@ -36,11 +38,12 @@ export type StepFacts = {
 
 const REASONS: Record<Step, (facts: StepFacts) => string[]> = {
   edit: () => [],
-  submit: ({ stops, reviewDate, deliverable, localesWithoutMeasures }) => [
+  submit: ({ stops, reviewDate, deliverable, localesWithoutMeasures, localesWithoutNote }) => [
     ...(stops > 0 ? ["findingsOpen"] : []),
     ...(reviewDate === null ? ["reviewDateMissing"] : []),
     ...(deliverable ? [] : ["notDeliverable"]),
     ...(localesWithoutMeasures.length > 0 ? ["measureWordsMissing"] : []),
+    ...(localesWithoutNote.length > 0 ? ["correctionNoteMissing"] : []),
   ],
   return: ({ authors, actorId }) => (authors.includes(actorId) ? ["ownWork"] : []),
   sign: ({ authors, actorId }) => (authors.includes(actorId) ? ["ownWork"] : []),

@@ -2,7 +2,7 @@ import type { AssessmentResult, Interval, PackageResult } from "../engine/types"
 
 /** Central value with its ends where draws exist. Persons, shares 0..1, days from day 0, or money. */
 export type FigureValue = { value: number; low: number | null; high: number | null };
-export type FigureKind = "deaths" | "persons" | "share" | "day";
+export type FigureKind = "deaths" | "persons" | "share" | "day" | "money";
 
 type Read = (result: AssessmentResult, found: PackageResult | null) => FigureValue | null;
 type Entry = { kind: FigureKind; of: "either" | "package"; read: Read };
@@ -22,6 +22,7 @@ export const FIGURES = {
     read: (result, found) =>
       found ? drawn(found.uncertainty?.finalDeaths.asScheduled, found.finalDeaths.asScheduled) : drawn(result.withoutMeasures.uncertainty?.finalDeaths, result.withoutMeasures.finalDeaths),
   },
+  finalDeathsHeld: { kind: "deaths", of: "package", read: (_, found) => (found ? drawn(found.uncertainty?.finalDeaths.heldToEnd, found.finalDeaths.heldToEnd) : null) },
   deathsAverted: { kind: "deaths", of: "package", read: (_, found) => (found ? drawn(found.uncertainty?.deathsAverted.asScheduled, found.deathsAverted.asScheduled) : null) },
   infected: {
     kind: "persons",
@@ -42,11 +43,14 @@ export const FIGURES = {
     of: "package",
     read: (_, found) => exact(found?.uncertainty?.phases.findLast(({ chanceEndsByItself }) => chanceEndsByItself !== null)?.chanceEndsByItself),
   },
-  worstDay: {
+  /** Day with most infectious people. */
+  peakDay: {
     kind: "day",
     of: "either",
     read: (result, found) => (found ? drawn(found.uncertainty?.peakDay, found.peak.day) : drawn(result.withoutMeasures.uncertainty?.peakDay, result.withoutMeasures.peak.day)),
   },
+  /** All payers, over all days charged, in the currency's major unit. */
+  costTotal: { kind: "money", of: "package", read: (_, found) => (found ? drawn(found.uncertainty?.cost.total, found.cost.total) : null) },
 } as const satisfies Record<string, Entry>;
 
 export type FigureKey = keyof typeof FIGURES;

@@ -1,11 +1,13 @@
-import { isKnownToken, tokensOf, typedDigits } from "./tokens";
+import { digitKey, isKnownToken, strayBraces, tokensOf, typedDigits } from "./tokens";
 
 export type TextParagraph = { id: string; text: string; sourceHash?: string };
 /** What is wrong with a text, and where. `paragraph` is the paragraph's place, from 1; null for the title. */
 export type TextFinding =
-  | { level: "stops"; code: "titleMissing" | "paragraphMissing" | "stale"; paragraph: number | null }
+  | { level: "stops"; code: "titleMissing" | "textMissing" | "paragraphMissing" | "stale"; paragraph: number | null }
   | { level: "stops"; code: "tokenUnknown" | "tokenMissing" | "tokenExtra"; paragraph: number | null; token: string }
+  | { level: "stops"; code: "braces"; paragraph: number | null; token: string }
   | { level: "stops"; code: "digitsDiffer"; paragraph: number | null; digits: string }
+  | { level: "looks"; code: "untranslated"; paragraph: number | null }
   | { level: "looks"; code: "digitsTyped"; paragraph: number | null; digits: string }
   | { level: "looks"; code: "longSentence"; paragraph: number | null; words: number }
   | { level: "looks"; code: "noInterval"; paragraph: number | null; token: string };
@@ -28,10 +30,12 @@ const lacking = (a: readonly string[], b: readonly string[]): string[] => {
 /** What stops or wants a look in the source text. @param resolvable tokens that the assessment and schedule can fill */
 export function checkSource(title: string, paragraphs: readonly TextParagraph[], resolvable: ReadonlySet<string>, intervalOf: (ref: string) => string | null, locale: string): TextFinding[] {
   const found: TextFinding[] = title.trim() === "" ? [{ level: "stops", code: "titleMissing", paragraph: null }] : [];
+  if (!paragraphs.some(({ text }) => text.trim() !== "")) found.push({ level: "stops", code: "textMissing", paragraph: null });
   for (const [index, { text }] of [{ text: title }, ...paragraphs].entries()) {
     const paragraph = index === 0 ? null : index;
     const tokens = tokensOf(text);
     for (const token of new Set(tokens)) if (!isKnownToken(token) || !resolvable.has(token)) found.push({ level: "stops", code: "tokenUnknown", paragraph, token });
+    for (const token of strayBraces(text)) found.push({ level: "stops", code: "braces", paragraph, token });
     for (const token of tokens) {
       const interval = intervalOf(token);
       if (interval !== null && !tokens.includes(interval)) found.push({ level: "looks", code: "noInterval", paragraph, token });
@@ -59,7 +63,10 @@ export function checkTranslation(
     const [wanted, given] = [tokensOf(from), tokensOf(to)];
     for (const token of lacking(wanted, given)) found.push({ level: "stops", code: "tokenMissing", paragraph, token });
     for (const token of lacking(given, wanted)) found.push({ level: "stops", code: isKnownToken(token) ? "tokenExtra" : "tokenUnknown", paragraph, token });
-    const differ = [...lacking(typedDigits(from), typedDigits(to)), ...lacking(typedDigits(to), typedDigits(from))];
+    for (const token of strayBraces(to)) found.push({ level: "stops", code: "braces", paragraph, token });
+    if (/\p{L}{3}/u.test(to.replace(/\{\{[^{}]*\}\}/g, "")) && to.trim() === from.trim()) found.push({ level: "looks", code: "untranslated", paragraph });
+    const [typedFrom, typedTo] = [typedDigits(from).map(digitKey), typedDigits(to).map(digitKey)];
+    const differ = [...lacking(typedFrom, typedTo), ...lacking(typedTo, typedFrom)];
     if (differ.length > 0) found.push({ level: "stops", code: "digitsDiffer", paragraph, digits: [...new Set(differ)].join(", ") });
   };
   compare(source.title, translation.title, null, translation.titleSourceHash);

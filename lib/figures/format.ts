@@ -38,6 +38,10 @@ export function formatMoney(amount: number, { power }: MoneyUnit, locale: string
   return minus(formatter(locale, { minimumFractionDigits: power === 0 ? 0 : decimals, maximumFractionDigits: decimals }).format(value));
 }
 
+/** An amount in full for running text, three significant figures: "€46,200,000". @param currency ISO 4217 */
+export const formatMoneyInText = (amount: number, currency: string, locale: string): string =>
+  minus(formatter(locale, { style: "currency", currency, maximumFractionDigits: 0 }).format(threeFigures(amount)));
+
 const minus = (text: string) => text.replace(/^-/, "−");
 
 /** A calendar day for tables: day and short month, the year only where asked for. @param iso yyyy-mm-dd */

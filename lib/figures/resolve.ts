@@ -11,6 +11,7 @@ export type FigureWords = {
   under: (percent: string) => string;
   over: (percent: string) => string;
   day: (day: number) => string;
+  money: (amount: number) => string;
 };
 
 const one = (key: FigureKey, value: number, words: FigureWords): string => {
@@ -25,6 +26,8 @@ const one = (key: FigureKey, value: number, words: FigureWords): string => {
     }
     case "day":
       return words.day(value);
+    case "money":
+      return words.money(value);
   }
 };
 

@@ -24,3 +24,16 @@ export const isKnownToken = (token: string): boolean => KNOWN.test(token);
 /** Digits that stand in the text itself, group by group: facts that nothing binds. */
 export const typedDigits = (text: string): string[] =>
   piecesOfText(text).flatMap((piece) => (piece.kind === "text" ? (piece.text.match(/\p{Nd}+(?:[.,:\u202f\u00a0]\p{Nd}+)*/gu) ?? []) : []));
+
+/** The same number however it is written: grouping dropped, a decimal comma as a point, digits of other scripts as Latin ones. */
+export function digitKey(digits: string): string {
+  const latin = digits.replace(/\p{Nd}/gu, (digit) => {
+    const zero = [0x0660, 0x06f0, 0x0966].find((each) => digit.charCodeAt(0) >= each && digit.charCodeAt(0) < each + 10);
+    return zero === undefined ? digit : String(digit.charCodeAt(0) - zero);
+  });
+  return /^\d{1,3}(?:[.,\u202f\u00a0]\d{2,3})*[.,\u202f\u00a0]\d{3}$/.test(latin) ? latin.replace(/\D/g, "") : latin.replace(",", ".");
+}
+
+/** Braces that no token uses up, with what they hold: a reference that was mistyped and would be read as it stands. */
+export const strayBraces = (text: string): string[] =>
+  piecesOfText(text).flatMap((piece) => (piece.kind === "text" ? (piece.text.match(/[{}]+[^\s{}]*[{}]*/g) ?? []) : []));

@@ -32,15 +32,15 @@ export async function publishBriefing(ctx: StaffCtx, raw: z.input<typeof Publish
     if (reasons.length > 0 || !whole.version || !signature) throw new DomainError("notReady", { reasons });
     const [before] = await tx.select({ id: releases.id, number: releases.number }).from(releases).where(eq(releases.briefingId, briefingId)).orderBy(desc(releases.number)).limit(1);
     const kind = before ? (row.revision?.kind ?? "update") : "first";
+    const { rendered, correction = {} } = JSON.parse(whole.version.content) as VersionContent;
     const [release] = await tx
       .insert(releases)
       .values({
         briefingId, versionId: whole.version.id, outbreakId: frozen.outbreakId, slug: row.slug, number: (before?.number ?? 0) + 1, kind,
-        correction: row.revision?.kind === "correction" ? row.revision.notes : {}, urgency, assessmentHash: frozen.resultHash, contentHash: whole.version.contentHash, publishedBy: ctx.actor.id, publishedAt: ctx.now,
+        correction, urgency, assessmentHash: frozen.resultHash, contentHash: whole.version.contentHash, publishedBy: ctx.actor.id, publishedAt: ctx.now,
       })
       .returning({ id: releases.id, number: releases.number });
     if (!release) throw new Error("no release was written");
-    const { rendered } = JSON.parse(whole.version.content) as VersionContent;
     await tx.insert(publications).values(
       rendered.map((each) => {
         const content = canonicalJson(each);

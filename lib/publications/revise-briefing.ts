@@ -6,6 +6,7 @@ import { audit } from "@/lib/audit/audit";
 import { requirePermission } from "@/lib/auth/require-permission";
 import type { Revision } from "@/lib/briefings/constants";
 import { getWhole, stepFacts } from "@/lib/briefings/queries";
+import { recordAuthor } from "@/lib/briefings/record-author";
 import { ReviseBriefingInput } from "@/lib/briefings/schema";
 import { reasonsAgainst } from "@/lib/briefings/workflow";
 import { inTransaction, type StaffCtx } from "@/lib/context";
@@ -31,6 +32,7 @@ export async function reviseBriefing(ctx: StaffCtx, raw: z.input<typeof ReviseBr
       .update(briefings)
       .set({ state: kind === "correction" ? "underCorrection" : "draft", revision, versionNumber: sql`${briefings.versionNumber} + 1`, version: sql`${briefings.version} + 1`, updatedAt: ctx.now, ...(assessmentId ? { assessmentId } : {}) })
       .where(eq(briefings.id, briefingId));
+    await recordAuthor(tx, ctx, briefingId, whole.row.sourceLocale);
     await audit(tx, ctx, { action: kind === "correction" ? "briefing.correct" : "briefing.update", subject: `briefing/${briefingId}`, facts: { kind } });
   });
 }

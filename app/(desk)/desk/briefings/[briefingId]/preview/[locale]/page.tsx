@@ -5,7 +5,7 @@ import { getTranslations } from "next-intl/server";
 import { requireStaff } from "@/app/(desk)/_lib/session";
 import { BriefingArticle } from "@/components/briefings/briefing-article";
 import { getWhole, renderFacts } from "@/lib/briefings/queries";
-import { renderBriefing } from "@/lib/briefings/render";
+import { pairedParagraphs, renderBriefing } from "@/lib/briefings/render";
 import { isLocale, LOCALES } from "@/lib/i18n/locales";
 
 export const metadata: Metadata = { title: "Preview" };
@@ -14,10 +14,10 @@ export default async function PreviewPage({ params }: { params: Promise<{ briefi
   await requireStaff();
   const { briefingId, locale } = await params;
   if (!isLocale(locale)) notFound();
-  const { row, texts, frozen } = await getWhole(briefingId).catch(() => notFound());
+  const { row, texts, source, frozen } = await getWhole(briefingId).catch(() => notFound());
   const text = texts.find((each) => each.locale === locale);
   if (!text) notFound();
-  const [t, content] = await Promise.all([getTranslations("Briefings"), renderBriefing(frozen, renderFacts(row), text)]);
+  const [t, content] = await Promise.all([getTranslations("Briefings"), renderBriefing(frozen, renderFacts(row), { ...text, paragraphs: pairedParagraphs(source.paragraphs, text.paragraphs) })]);
   return (
     <main id="main">
       <div className="wrap">
