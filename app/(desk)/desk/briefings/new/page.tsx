@@ -13,7 +13,9 @@ export default async function NewBriefingPage({ searchParams }: { searchParams: 
   const t = await getTranslations("Briefings");
   const frozen = (await listAssessments()).filter((row) => row.frozenAt !== null);
   const shown = typeof assessment === "string" ? frozen.filter(({ id }) => id === assessment) : frozen;
-  const whole = await Promise.all((shown.length ? shown : frozen).slice(0, 10).map(({ id }) => getFrozen(id)));
+  // One record that can't be read (an older context, say) must not take the others away.
+  const read = await Promise.allSettled((shown.length ? shown : frozen).slice(0, 10).map(({ id }) => getFrozen(id)));
+  const whole = read.flatMap((each) => (each.status === "fulfilled" ? [each.value] : []));
   return (
     <main id="main" className="wrap">
       <PageHead title={t("newTitle")} lede={t("newLede")} />
