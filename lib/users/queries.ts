@@ -1,4 +1,4 @@
-import { asc, count, desc, eq, max } from "drizzle-orm";
+import { and, asc, count, desc, eq, like, max } from "drizzle-orm";
 import { db } from "@/db/client";
 import { sessions, users } from "@/db/schema";
 import { requirePermission } from "@/lib/auth/require-permission";
@@ -19,9 +19,13 @@ export async function listUsers(ctx: StaffCtx) {
 export const listOwnSessions = (ctx: StaffCtx) =>
   db.select({ createdAt: sessions.createdAt, expires: sessions.expires }).from(sessions).where(eq(sessions.userId, ctx.actor.id)).orderBy(desc(sessions.createdAt));
 
-/** The people whom the demonstration offers on its sign-in page. */
+/** The invented people whom the demonstration offers on its sign-in page; nobody else, however many work here. */
 export const listDemonstrationPeople = () =>
-  db.select({ id: users.id, name: users.name, role: users.role }).from(users).where(eq(users.status, "active")).orderBy(asc(users.role), asc(users.name)).limit(20);
+  db
+    .select({ id: users.id, name: users.name, role: users.role })
+    .from(users)
+    .where(and(eq(users.status, "active"), like(users.id, "demo-%")))
+    .orderBy(asc(users.role), asc(users.name));
 
 export async function countUsers(): Promise<number> {
   const [row] = await db.select({ n: count() }).from(users);
